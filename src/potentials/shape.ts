@@ -2,7 +2,15 @@ import type { Potential } from "./potential.js";
 
 /** Kinds of quantity that a parameter can be; "text" and "number" carry no unit. */
 export type QuantityKind =
-  | "length" | "energy" | "time" | "mass" | "voltage" | "field" | "frequency" | "temperature" | "strength";
+  | "length"
+  | "energy"
+  | "time"
+  | "mass"
+  | "voltage"
+  | "field"
+  | "frequency"
+  | "temperature"
+  | "strength";
 
 /** One parameter of a shape, as the design file, the JSON Schema and `postern potentials` show it. */
 export interface QuantityParameter {
@@ -35,7 +43,10 @@ export type ParameterValues = Readonly<Record<string, ParameterValue>>;
 
 /** Thrown by a shape's `build` for values that contradict each other; `path` names the parameter. */
 export class ParameterError extends RangeError {
-  constructor(readonly path: string, message: string) {
+  constructor(
+    readonly path: string,
+    message: string,
+  ) {
     super(message);
     this.name = "ParameterError";
   }
