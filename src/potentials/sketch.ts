@@ -231,7 +231,7 @@ function lengthAxis(view: View, width: number, margin: number, strokes: Strokes)
   write(right, width - right.length);
   const zero = Math.floor((-view.from / (view.to - view.from)) * width);
   // Zero gets its mark when it lies in the window and clear of the labels at the ends.
-  if (zero > left.length + 1 && zero < width - right.length - 2) {
+  if (zero > left.length && zero < width - right.length - 1) {
     line[zero] = strokes.foot;
     text[zero] = "0";
   }
