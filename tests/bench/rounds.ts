@@ -20,7 +20,7 @@ export interface Comparison {
 }
 
 /** Rounds that are run and thrown away: compilers and caches settle in them. */
-export const WARM_UP_ROUNDS = 5;
+const WARM_UP_ROUNDS = 5;
 /** Rounds that count; odd, so that the median is one of them. */
 export const ROUNDS = 41;
 

@@ -17,7 +17,7 @@ const ELSEWHERE: readonly (readonly [RegExp, string])[] = [
 ];
 const RUN = /^(?:npx postern|postern|npm)(?:\s|$)/;
 
-export interface ReadmeCommand {
+interface ReadmeCommand {
   readonly line: number;
   readonly command: string;
   readonly exit: number;
@@ -38,7 +38,7 @@ function fencedBlocks(markdown: string): Block[] {
 }
 
 /** The commands of a shell block, continued lines joined, comment lines and a leading "$ " dropped. */
-export function shellCommands({ line, text }: Pick<Block, "line" | "text">): ReadmeCommand[] {
+function shellCommands({ line, text }: Pick<Block, "line" | "text">): ReadmeCommand[] {
   const commands: ReadmeCommand[] = [];
   let open = "";
   let openLine = line;
