@@ -1,16 +1,7 @@
+import type { QuantityKind } from "../units/quantity.js";
 import type { Potential } from "./potential.js";
 
-/** Kinds of quantity that a parameter can be; "text" and "number" carry no unit. */
-export type QuantityKind =
-  | "length"
-  | "energy"
-  | "time"
-  | "mass"
-  | "voltage"
-  | "field"
-  | "frequency"
-  | "temperature"
-  | "strength";
+export type { QuantityKind };
 
 /** One parameter of a shape, as the design file, the JSON Schema and `postern potentials` show it. */
 export interface QuantityParameter {
