@@ -14,109 +14,109 @@ import { asOutputError, OutputError } from "./output-error.js";
 
 export { OutputError } from "./output-error.js";
 
+export type Content = string | Uint8Array;
+
 /** Signals that end the program while it writes. */
 const SIGNALS = ["SIGINT", "SIGTERM", "SIGHUP"] as const;
 
 /**
- * Writes one file whole or not at all; its folder is created when missing.
+ * Writes one file whole or not at all; its folder is created when missing, and a symbolic link is followed.
  *
  * @throws OutputError when it cannot be written; then a file that was there before still has its old content
  */
-export async function writeFileAtomic(path: string, content: string | Uint8Array): Promise<void> {
-  if (basename(path) === "" || path.endsWith("/")) throw new OutputError(path, "a file name is needed");
-  await commit(path, dirname(path), { [basename(path)]: content });
+export async function writeFileAtomic(path: string, content: Content): Promise<void> {
+  if (/(?:^|[/\\])\.{0,2}$/.test(path)) throw new OutputError(path, "a file name is needed, not a folder");
+  try {
+    const link =
+      lstatSync(path, { throwIfNoEntry: false })?.isSymbolicLink() &&
+      statSync(path, { throwIfNoEntry: false });
+    const real = link ? realpathSync(path) : path;
+    await commit(dirname(real), { [basename(real)]: content });
+  } catch (error) {
+    throw asOutputError(path, error);
+  }
 }
 
 /**
  * Writes files into a folder, which is created when missing. All of them are written under temporary names first and
- * then renamed, so that none is ever half-written, and a fault or a signal before the renaming leaves the folder as it was.
+ * then renamed, so that none is ever half-written, and a fault or a signal before the renaming leaves the folder as it
+ * was.
  *
  * @param files content by plain file name
  * @throws OutputError with one line for the user; TypeError for a name with a folder in it
  */
-export async function writeFolder(
-  dir: string,
-  files: Readonly<Record<string, string | Uint8Array>>,
-): Promise<void> {
+export async function writeFolder(dir: string, files: Readonly<Record<string, Content>>): Promise<void> {
   for (const name of Object.keys(files))
     if (name === "" || name === "." || name === ".." || /[/\\\0]/.test(name))
       throw new TypeError(`a plain file name is needed; got "${name}"`);
-  await commit(dir, dir, files);
-}
-
-/** Finds out whether a folder can be written to, and leaves nothing behind: for asking before a long calculation. */
-export function checkFolder(dir: string): void {
-  withFolder(dir, dir, (staging, created) => {
-    rmSync(staging, { recursive: true });
-    removeEmpty(dir, created);
-  });
-}
-
-async function commit(
-  shownPath: string,
-  dir: string,
-  files: Readonly<Record<string, string | Uint8Array>>,
-): Promise<void> {
-  await withFolder(shownPath, dir, async (staging, created) => {
-    const undo = () => {
-      rmSync(staging, { recursive: true, force: true });
-      removeEmpty(dir, created);
-    };
-    const release = onExit(undo);
-    try {
-      for (const [name, content] of Object.entries(files)) await writeDurably(join(staging, name), content);
-      // Without a pause, so that no signal comes between two files.
-      const targets = Object.keys(files).map((name) => [join(staging, name), target(shownPath, dir, name)]);
-      for (const [from, to] of targets) renameSync(from, to);
-    } finally {
-      undo();
-      await release();
-    }
-  });
-}
-
-/** Creates the folder and, in it, one for temporary files; hands both to `use` and words the faults. */
-function withFolder<T>(
-  shownPath: string,
-  dir: string,
-  use: (staging: string, created: string | undefined) => T,
-): T {
-  let created: string | undefined;
   try {
-    if (statSync(dir, { throwIfNoEntry: false })?.isDirectory() === false)
-      throw new OutputError(dir, "this is a file, and a folder is needed; choose another name or remove it");
-    created = mkdirSync(dir, { recursive: true });
-    const staging = mkdtempSync(join(realpathSync(dir), ".postern-"));
-    const result = use(staging, created);
-    if (result instanceof Promise)
-      return result.catch((error) => {
-        throw asOutputError(shownPath, error);
-      }) as T;
-    return result;
+    await commit(dir, files);
   } catch (error) {
-    removeEmpty(dir, created);
-    throw asOutputError(shownPath, error);
+    throw asOutputError(dir, error);
   }
 }
 
-/** Where a file is to go: through a symbolic link to what it points at, never onto a folder. */
-function target(shownPath: string, dir: string, name: string): string {
-  const path = join(dir, name);
-  if (statSync(path, { throwIfNoEntry: false })?.isDirectory())
-    throw new OutputError(
-      shownPath === dir ? path : shownPath,
-      "there is a folder of this name; remove it or choose another",
-    );
-  const isLink =
-    lstatSync(path, { throwIfNoEntry: false })?.isSymbolicLink() && statSync(path, { throwIfNoEntry: false });
-  return isLink ? realpathSync(path) : path;
+/**
+ * Finds out whether a folder can be written to, and leaves nothing behind: for asking before a long calculation.
+ *
+ * @throws OutputError when it cannot
+ */
+export function checkFolder(dir: string): void {
+  try {
+    openStaging(dir).remove();
+  } catch (error) {
+    throw asOutputError(dir, error);
+  }
+}
+
+async function commit(dir: string, files: Readonly<Record<string, Content>>): Promise<void> {
+  const staging = openStaging(dir);
+  const release = whenEnding(staging.remove);
+  try {
+    for (const [name, content] of Object.entries(files))
+      await writeDurably(join(staging.path, name), content);
+    for (const name of Object.keys(files)) refuseOther(join(dir, name));
+    // Without a pause, so that no signal comes between two files.
+    for (const name of Object.keys(files)) renameSync(join(staging.path, name), join(dir, name));
+  } finally {
+    staging.remove();
+    await release();
+  }
+}
+
+/** Creates the folder and, in it, one for the temporary files; `remove` takes back what is still empty or temporary. */
+function openStaging(dir: string): { readonly path: string; remove(): void } {
+  if (statSync(dir, { throwIfNoEntry: false })?.isDirectory() === false)
+    throw new OutputError(dir, "this is a file, and a folder is needed; choose another name or remove it");
+  const created = mkdirSync(dir, { recursive: true });
+  try {
+    // On the file system of the folder itself: only there is renaming one indivisible step.
+    const path = mkdtempSync(join(resolve(dir), ".postern-"));
+    const remove = () => {
+      rmSync(path, { recursive: true, force: true });
+      removeEmpty(dir, created);
+    };
+    return { path, remove };
+  } catch (error) {
+    removeEmpty(dir, created);
+    throw error;
+  }
+}
+
+/** A folder or a device is never replaced by a file. */
+function refuseOther(path: string): void {
+  const there = statSync(path, { throwIfNoEntry: false });
+  if (there?.isDirectory())
+    throw new OutputError(path, "there is a folder of this name; choose another or remove it");
+  if (there && !there.isFile())
+    throw new OutputError(path, "this is no ordinary file and cannot be replaced by one");
 }
 
 /** Writes all bytes and has the system put them on the disk. */
-async function writeDurably(path: string, content: string | Uint8Array): Promise<void> {
+async function writeDurably(path: string, content: Content): Promise<void> {
   const file = await open(path, "wx");
   try {
-    // writeFile goes on after a short write, so that a full disk is an error and not a file that ends early.
+    // This writeFile goes on after a short write, so that a full disk is an error and not a file that ends early.
     await file.writeFile(content);
     await file.sync();
   } finally {
@@ -124,7 +124,7 @@ async function writeDurably(path: string, content: string | Uint8Array): Promise
   }
 }
 
-/** Removes the folders that were made for the output, as long as they are empty. */
+/** Removes the folders that were made for the output, from the innermost outward, as long as they are empty. */
 function removeEmpty(dir: string, created: string | undefined): void {
   if (created === undefined) return;
   const first = resolve(created);
@@ -139,15 +139,17 @@ function removeEmpty(dir: string, created: string | undefined): void {
 }
 
 /**
- * Has `undo` done when the program ends or is told to end. A signal that nobody else listens to still ends the program.
+ * Has `undo` done when the program ends in the meantime. A signal that nobody else listens to does both: it undoes, and
+ * still ends the program; where somebody does, the few milliseconds of writing go on.
  *
- * @returns a function that takes all this back, after any signal that has already arrived
+ * @returns a function that takes this back, once any signal that has already arrived is dealt with
  */
-function onExit(undo: () => void): () => Promise<void> {
+function whenEnding(undo: () => void): () => Promise<void> {
   const stop = (signal: NodeJS.Signals) => {
+    if (process.listenerCount(signal) > 1) return;
     undo();
     off();
-    if (process.listenerCount(signal) === 0) process.kill(process.pid, signal);
+    process.kill(process.pid, signal);
   };
   const off = () => {
     process.off("exit", undo);
