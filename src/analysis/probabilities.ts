@@ -1,0 +1,76 @@
+import type { Grid } from "../grid/grid.js";
+import type { Potential } from "../potentials/potential.js";
+
+/** Probability left of, inside and right of the structure. */
+export interface Shares {
+  readonly left: number;
+  readonly inside: number;
+  readonly right: number;
+}
+
+/** Node numbers that divide a grid: nodes below `first` are left of the structure, nodes from `end` on right of it. */
+export interface Division {
+  readonly first: number;
+  readonly end: number;
+  /** On a circle the right side ends before this node and what follows belongs to the left. */
+  readonly seam: number;
+}
+
+/** Divides a grid at the faces (nm); nodes on a face count as inside. `seam` (nm) matters on a circle only. */
+export function divide(
+  grid: Grid,
+  faces: readonly [number, number],
+  seam = Number.POSITIVE_INFINITY,
+): Division {
+  const { x } = grid;
+  // A face is a node up to the rounding of its coordinate.
+  const slack = 1e-9 * grid.finest;
+  let first = 0;
+  while (first < x.length && x[first] < faces[0] - slack) first++;
+  let end = first;
+  while (end < x.length && x[end] <= faces[1] + slack) end++;
+  let last = end;
+  while (last < x.length && x[last] < seam) last++;
+  return { first, end, seam: last };
+}
+
+/** Share of its range that V may still be away from its level where a structure is taken to end for counting. */
+const CORE_TOLERANCE = 1e-5;
+
+/**
+ * The places between which a probability counts as inside: the faces of a layered structure; of a smooth one those where V has come within
+ * 1e-5 of its range of the level, so that slow components in the far flanks are not taken for trapped ones.
+ */
+export function core(potential: Potential): readonly [number, number] {
+  const { faces, scale, levelLeft, levelRight, highest, lowest } = potential;
+  if (scale === Number.POSITIVE_INFINITY || potential.confining) return faces;
+  const limit = CORE_TOLERANCE * (highest - lowest);
+  const inward = (x: number, level: number, step: number, stop: number): number => {
+    let at = x;
+    while ((stop - at) * step > 0 && Math.abs(potential.value(at + step) - level) < limit) at += step;
+    return at;
+  };
+  return [
+    inward(faces[0], levelLeft, scale / 8, faces[1]),
+    inward(faces[1], levelRight, -scale / 8, faces[0]),
+  ];
+}
+
+/** sum_j w_j |psi_j|^2 over the three parts. Cost O(n). */
+export function shares(psi: Float64Array, grid: Grid, division: Division): Shares {
+  const { weight } = grid;
+  const { first, end, seam } = division;
+  return {
+    left: norm(psi, weight, 0, first) + norm(psi, weight, seam, weight.length),
+    inside: norm(psi, weight, first, end),
+    right: norm(psi, weight, end, seam),
+  };
+}
+
+/** sum of w_j |psi_j|^2 for j from `from` to `to` - 1. */
+export function norm(psi: Float64Array, weight: Float64Array, from = 0, to = weight.length): number {
+  let sum = 0;
+  for (let j = from; j < to; j++)
+    sum += weight[j] * (psi[2 * j] * psi[2 * j] + psi[2 * j + 1] * psi[2 * j + 1]);
+  return sum;
+}

@@ -1,0 +1,45 @@
+import type { Departure } from "../grid/journey.js";
+import type { Potential } from "../potentials/potential.js";
+import type { Design } from "../problem/design.js";
+import { atMost, type Check } from "./calculation.js";
+import type { Outcome } from "./outcome.js";
+
+/** Largest |psi| of the start at the structure's face, relative to its peak, that counts as clear. */
+const CLEAR_AMPLITUDE = 1e-9;
+/** Largest change of the norm over a calculation that counts as round-off. */
+const NORM_LIMIT = 1e-9;
+/** Largest error of the sampled packet's norm. */
+const SAMPLING_LIMIT = 1e-9;
+
+/** Distance between the faces, nm. */
+export function structureLength(potential: Potential): number {
+  return potential.faces[1] - potential.faces[0];
+}
+
+/** The checks that every transmission calculation owes, whichever stepper it used. */
+export function commonChecks(
+  design: Design,
+  from: Departure,
+  outcome: Outcome,
+  drift: number,
+  accuracy: number,
+  transmitted: number,
+): Check[] {
+  const atFace = Math.exp(-((Math.max(0, from.distance) / (2 * design.packet.width)) ** 2));
+  return [
+    atMost(
+      "start",
+      atFace,
+      CLEAR_AMPLITUDE,
+      "the packet's amplitude at the structure's face at the start, relative to its peak",
+    ),
+    atMost("packet", outcome.sampling, SAMPLING_LIMIT, "the norm of the packet on the grid, minus one"),
+    atMost("norm", drift, NORM_LIMIT, "change of the norm over the whole calculation"),
+    atMost(
+      "remaining",
+      outcome.unfinished / transmitted,
+      accuracy,
+      "what is still inside or still to arrive at the end, relative to what got through",
+    ),
+  ];
+}

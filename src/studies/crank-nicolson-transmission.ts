@@ -1,0 +1,202 @@
+import {
+  alignedGrid,
+  alignedPoints,
+  alignedStretches,
+  forcedStretches,
+  type Stretch,
+} from "../grid/aligned.js";
+import { type Clock, type Departure, departure, passage, type Room, roomFor } from "../grid/journey.js";
+import { Extrapolation } from "../numerics/extrapolation.js";
+import type { Design } from "../problem/design.js";
+import { crankNicolson } from "../steppers/crank-nicolson.js";
+import { HBAR } from "../units/constants.js";
+import { atMost, type Calculation, type RunSummary, type StudyOptions } from "./calculation.js";
+import { commonChecks, structureLength } from "./common-checks.js";
+import { forcedRoom } from "./forced.js";
+import { DesignLimitError } from "./limits.js";
+import { type Outcome, runToEnd } from "./outcome.js";
+
+/** Cells of the successive calculations in units of the unrefined grid's. Tuned for least work to 1e-6 on check-values 3.6. */
+const REFINEMENTS = [2, 3, 4, 6, 8, 12, 16, 24, 32];
+/** Share of the error asked for that what remains may take. */
+const REMAINING_SHARE = 0.1;
+/** The end is moved out by this factor while too much remains. */
+const PROLONGATION = 1.5;
+/** Work (nodes times steps) after which the end is no longer moved out and the grid no longer refined. */
+const WORK_LIMIT = 2e9;
+/** Nodes beyond which a design is refused. */
+const POINTS_LIMIT = 2 ** 23;
+
+/** All that is fixed before the first step. */
+export interface ClosedPlan {
+  readonly from: Departure;
+  readonly clock: Extract<Clock, { kind: "cayley" }>;
+  readonly timeStep: number;
+  readonly order: number;
+  readonly end: number;
+  readonly steps: number;
+  readonly room: Room;
+  readonly stretches: readonly Stretch[];
+  /** The one refinement of a grid that the user asked for; undefined when refined until accurate. */
+  readonly forced: boolean;
+}
+
+/**
+ * Plans the Crank-Nicolson calculation that ends at `end` (fs; automatic when undefined). The time step is as large as
+ * lets all promptly moving groups pass at half their speed or better: E_c = 2 hbar / dt is the distance from the mean energy to the
+ * edge of the packet. The transmission does not depend on it; the room needed and the number of steps do.
+ */
+export function planClosed(design: Design, end?: number): ClosedPlan {
+  const { numerics, potential } = design;
+  const from = departure(design);
+  const cutoff = numerics.timeStep ? (2 * HBAR) / numerics.timeStep : from.highest - from.energy;
+  const clock = { kind: "cayley", cutoff } as const;
+  const timeStep = (2 * HBAR) / cutoff;
+  const reach = from.distance + structureLength(potential) + 6 * design.packet.width;
+  const wanted = numerics.end ?? end ?? passage(from, reach, clock);
+  const steps = Math.max(10, Math.ceil(wanted / timeStep));
+  const actual = steps * timeStep;
+  const room = forcedRoom(design, from, roomFor(from, actual, clock, "closed"));
+  const automatic = alignedStretches(potential, from, room);
+  const step = forcedStep(design, room);
+  const stretches = step === undefined ? automatic : forcedStretches(automatic, step);
+  const order = numerics.order ?? crankNicolson.defaultOrder;
+  return { from, clock, timeStep, order, end: actual, steps, room, stretches, forced: step !== undefined };
+}
+
+function forcedStep(design: Design, room: Room): number | undefined {
+  const { step, points } = design.numerics;
+  if (step !== undefined) return step;
+  return points === undefined
+    ? undefined
+    : (room.near + room.far + structureLength(design.potential)) / (points - 1);
+}
+
+/**
+ * Transmission by Crank-Nicolson: whole calculations on grids refined in proportion, extrapolated to vanishing
+ * spacing, prolonged until what remains does not matter. A grid that the user asked for is taken at its word: one calculation on it.
+ */
+export async function crankNicolsonTransmission(
+  design: Design,
+  accuracy: number,
+  options: StudyOptions,
+): Promise<Calculation> {
+  let plan = planClosed(design);
+  for (;;) {
+    const attempt = await attemptAt(plan, design, accuracy, options);
+    const next = prolonged(design, plan, attempt, accuracy);
+    if (next === undefined) return summary(design, plan, attempt, accuracy);
+    plan = next;
+  }
+}
+
+interface Attempt {
+  readonly outcomes: readonly { readonly refinement: number; readonly outcome: Outcome }[];
+  readonly transmission: Extrapolation;
+  readonly reflection: Extrapolation;
+}
+
+/** Refines until the bound is met, or only measures the first grid when that already shows that too much remains. */
+async function attemptAt(
+  plan: ClosedPlan,
+  design: Design,
+  accuracy: number,
+  options: StudyOptions,
+): Promise<Attempt> {
+  const transmission = new Extrapolation();
+  const reflection = new Extrapolation();
+  const outcomes: { refinement: number; outcome: Outcome }[] = [];
+  for (const refinement of plan.forced ? [1] : REFINEMENTS) {
+    const points = alignedPoints(plan.stretches, refinement);
+    if (points > POINTS_LIMIT)
+      throw new DesignLimitError(
+        "potential",
+        `this design needs ${points} grid points, more than ${POINTS_LIMIT}: its lengths lie too far apart, or its packet is too wide or too slow`,
+      );
+    if (outcomes.length > 0 && points * plan.steps > WORK_LIMIT) break;
+    options.onProgress?.(`Crank-Nicolson, ${points} points, to ${plan.end.toPrecision(3)} fs`);
+    const grid = alignedGrid(plan.stretches, refinement);
+    const system = {
+      grid,
+      potential: design.potential,
+      particleMass: design.particleMass,
+      referenceEnergy: plan.from.energy,
+    };
+    const stepper = crankNicolson.prepare(system, plan.timeStep, plan.order);
+    const outcome = await runToEnd(stepper, plan.from, plan.steps, undefined, options);
+    outcomes.push({ refinement, outcome });
+    const t = transmission.add(1 / refinement, outcome.transmitted);
+    reflection.add(1 / refinement, outcome.reflected);
+    if (tooMuchRemains(outcome, accuracy)) break;
+    if (t.error <= 0.5 * accuracy * t.value && outcomes.length > 2) break;
+  }
+  return { outcomes, transmission, reflection };
+}
+
+function tooMuchRemains(outcome: Outcome, accuracy: number): boolean {
+  return outcome.unfinished > REMAINING_SHARE * accuracy * outcome.transmitted;
+}
+
+/** A plan with a later end when too much remained, unless the end is the user's or the work would grow past all measure. */
+function prolonged(
+  design: Design,
+  plan: ClosedPlan,
+  attempt: Attempt,
+  accuracy: number,
+): ClosedPlan | undefined {
+  const last = attempt.outcomes[attempt.outcomes.length - 1];
+  if (design.numerics.end !== undefined || !tooMuchRemains(last.outcome, accuracy)) return undefined;
+  const next = planClosed(design, plan.end * PROLONGATION);
+  return alignedPoints(next.stretches, plan.forced ? 1 : REFINEMENTS[0]) * next.steps > WORK_LIMIT / 4
+    ? undefined
+    : next;
+}
+
+function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: number): Calculation {
+  const { outcomes, transmission, reflection } = attempt;
+  const { outcome, refinement } = outcomes[outcomes.length - 1];
+  const t = transmission.result;
+  const r = reflection.result;
+  const drift = Math.max(...outcomes.map((o) => o.outcome.drift));
+  // Each calculation carries the drift of its norm as a relative error; the extrapolation adds them with weights below 30.
+  const roundOff = t.value * Math.min(1, 30 * (drift + Number.EPSILON * Math.sqrt(plan.steps)));
+  const remaining = outcome.unfinished;
+  const error = Math.min(1, t.error) + remaining + roundOff;
+  const widest = plan.stretches.reduce((h, s) => Math.max(h, (s.to - s.from) / s.cells), 0) / refinement;
+  const finest =
+    plan.stretches.reduce((h, s) => Math.min(h, (s.to - s.from) / s.cells), Infinity) / refinement;
+  const ends = plan.stretches;
+  return {
+    stepper: crankNicolson.name,
+    order: plan.order,
+    transmission: { value: t.value, error },
+    reflection: { value: r.value, error: Math.min(1, r.error) + remaining + roundOff },
+    remaining,
+    normDrift: drift,
+    grid: {
+      points: alignedPoints(plan.stretches, refinement),
+      step_nm: widest,
+      finest_nm: finest,
+      length_nm: ends[ends.length - 1].to - ends[0].from,
+    },
+    time: { step_fs: plan.timeStep, end_fs: plan.end, steps: plan.steps },
+    parts: { spacing: Math.min(1, t.error), timeStep: 0, remaining, roundOff },
+    runs: outcomes.map(
+      (o): RunSummary => ({
+        points: alignedPoints(plan.stretches, o.refinement),
+        step_nm: (widest * refinement) / o.refinement,
+        timeStep_fs: plan.timeStep,
+        transmission: o.outcome.transmitted,
+      }),
+    ),
+    checks: [
+      ...commonChecks(design, plan.from, outcome, drift, accuracy, t.value),
+      atMost(
+        "spacing",
+        t.error / t.value,
+        accuracy,
+        "relative error left by the grid, from whole calculations on refined grids",
+      ),
+    ],
+  };
+}
