@@ -1,7 +1,9 @@
 import {
   type Document,
   isMap,
+  isPair,
   isScalar,
+  isSeq,
   LineCounter,
   type Node,
   parseDocument,
@@ -10,7 +12,7 @@ import {
 } from "yaml";
 import { describeValue } from "../units/quantity.js";
 import { DesignError } from "./design-error.js";
-import type { Path } from "./path.js";
+import { formatPath, type Path } from "./path.js";
 
 /** The text of a file and the name to show for it in errors. */
 export interface SourceText {
@@ -57,7 +59,7 @@ export function readDocument({ text, file }: SourceText): SourceDocument {
   const document = parseDocument(text, { version: "1.2", lineCounter: lines, prettyErrors: false });
   const at = (offset: number): Position => position(lines, offset);
   const error = [...document.errors, ...document.warnings].sort((a, b) => a.pos[0] - b.pos[0])[0];
-  if (error !== undefined) fail(...syntaxFault(error, text, at(error.pos[0])));
+  if (error !== undefined) fail(...syntaxFault(error, document, at(error.pos[0])));
   if (document.contents === null)
     fail("the file holds nothing but comments", "Write at least title, potential and packet.");
   refuseDanglingAliases(document, (offset) =>
@@ -117,12 +119,19 @@ function tooDeepLine(text: string): number | undefined {
   return undefined;
 }
 
-function syntaxFault(error: YAMLError, text: string, where: Position): [string, string, Position, string?] {
+function syntaxFault(
+  error: YAMLError,
+  document: Document.Parsed,
+  where: Position,
+): [string, string, Position, string?] {
   switch (error.code) {
-    case "DUPLICATE_KEY": {
-      const key = /^["']?([^\s:"']+)/.exec(text.slice(error.pos[0]))?.[1];
-      return ["the key is given twice in one map", "Keep one of the two.", where, key];
-    }
+    case "DUPLICATE_KEY":
+      return [
+        "the key is given twice in one map",
+        "Keep one of the two.",
+        where,
+        pathOfKey(document, error.pos[0]),
+      ];
     case "TAB_AS_INDENT":
       return ["a tab stands where only spaces may indent", SYNTAX_HELP, where];
     case "MULTIPLE_DOCS":
@@ -133,9 +142,29 @@ function syntaxFault(error: YAMLError, text: string, where: Position): [string, 
       ];
     default: {
       const reason = error.message.charAt(0).toLowerCase() + error.message.slice(1);
-      return [`not readable as YAML: ${reason.replace(/\s+/g, " ")}`, SYNTAX_HELP, where];
+      return [
+        `not readable as YAML: ${reason.replace(/\s+/g, " ").replace('"quote', "quote")}`,
+        SYNTAX_HELP,
+        where,
+      ];
     }
   }
+}
+
+/** Path of the key that stands at an offset. */
+function pathOfKey(document: Document.Parsed, offset: number): string | undefined {
+  let found: string | undefined;
+  visit(document, {
+    Pair(_, pair, ancestors) {
+      if (!isScalar(pair.key) || pair.key.range?.[0] !== offset) return;
+      const way = [...ancestors, pair].flatMap((node, depth, all): (string | number)[] => {
+        if (isPair(node)) return [String(isScalar(node.key) ? node.key.value : node.key)];
+        return isSeq(node) ? [node.items.indexOf(all[depth + 1])] : [];
+      });
+      found = formatPath(way);
+    },
+  });
+  return found;
 }
 
 function refuseDanglingAliases(document: Document.Parsed, fail: (offset: number) => never): void {

@@ -50,7 +50,10 @@ function readSet(text: string): Override {
     const problem = `"${text.slice(0, equals).trim()}" is no path of a value, such as potential.layers[1].width`;
     throw new DesignError({ origin: option, problem, help });
   }
-  return { path, value: readValue(text.slice(equals + 1), option, formatPath(path), help), option };
+  const value = text.slice(equals + 1);
+  // A title is text even where it looks like a number: the shell leaves no quotes to say so.
+  if (formatPath(path) === "title") return { path, value, option };
+  return { path, value: readValue(value, option, formatPath(path), help), option };
 }
 
 /** Deepest nesting of brackets in a value; the parser is recursive. */

@@ -80,7 +80,7 @@ const envelopes = new Map<ShapeDefinition | undefined, z.ZodType<DesignData>>();
 function envelope(shape: ShapeDefinition | undefined): z.ZodType<DesignData> {
   let schema = envelopes.get(shape);
   if (schema === undefined) {
-    schema = designSchema(shape === undefined ? z.unknown() : shapeSchema(shape));
+    schema = designSchema(shape === undefined ? z.unknown().optional() : shapeSchema(shape));
     envelopes.set(shape, schema);
   }
   return schema;

@@ -163,7 +163,13 @@ function titleSchema(): z.ZodType {
 function packetSchema(): z.ZodType {
   const from = choice(["left", "right"], "the side that the packet comes from").prefault("left");
   const map = mapSchema({ ...quantities(PACKET_FIELDS), from }, "the Gaussian wavepacket at the start");
-  return map.meta({ oneOf: [{ required: ["width"] }, { required: ["energySpread"] }] });
+  return map.meta({
+    oneOf: ["width", "energySpread"].map((key) => ({
+      type: "object",
+      properties: { [key]: {} },
+      required: [key],
+    })),
+  });
 }
 
 function numericsSchema(): z.ZodType {

@@ -38,8 +38,7 @@ export function formatQuantity(value: number, kind: QuantityKind, unit?: string,
 function suitableUnit(value: number, kind: QuantityKind): Unit {
   const { usual, from, ladder } = LADDERS[kind];
   const size = Math.abs(value);
-  // Half an atomic mass unit parts electrons and their effective masses from nuclei and atoms.
-  if (kind === "mass") return unitNamed(size >= 0.5 * ATOMIC_MASS ? "u" : "m_e") as Unit;
+  if (kind === "mass") return suitableMassUnit(value);
   const units = unitsOf(kind);
   const base = units.find((entry) => entry.name === usual) as Unit;
   const inBase = size / 10 ** base.exponent;
@@ -53,16 +52,36 @@ function suitableUnit(value: number, kind: QuantityKind): Unit {
   return best;
 }
 
+/** A mass of more digits was computed; the best known ones, of atoms, have eleven. */
+const MOST_WRITTEN_DIGITS = 12;
+
+/**
+ * The unit in which a mass is a short number: the one that it was written in. What was computed is shown in m_e, and from
+ * half an atomic mass unit on, which parts electrons and their effective masses from atoms, in u.
+ */
+function suitableMassUnit(value: number): Unit {
+  const names = Math.abs(value) >= 0.5 * ATOMIC_MASS ? ["u", "m_e", "kg"] : ["m_e", "u", "kg"];
+  const units = names.map((name) => unitNamed(name) as Unit);
+  const digits = units.map((unit) => fewestDigits(value, unit));
+  const written = digits.findIndex((count) => count !== undefined && count <= MOST_WRITTEN_DIGITS);
+  const exact = digits.findIndex((count) => count !== undefined);
+  return units[written >= 0 ? written : Math.max(0, exact)];
+}
+
+/** The least number of significant digits that reads back as the same double; some doubles have none in a unit. */
+function fewestDigits(value: number, { factor }: Unit): number | undefined {
+  const ratio = value / factor;
+  for (let count = 1; count <= 17; count++) {
+    if (Number(ratio.toExponential(count - 1)) * factor === value) return count;
+  }
+  return undefined;
+}
+
 function numberIn(unit: Unit, value: number, digits: number | undefined): string {
   if (!Number.isFinite(value) || value === 0) return String(value === 0 ? 0 : value);
   if (unit.factor === 1) return decimal(scientific(value, digits), -unit.exponent);
-  const ratio = value / unit.factor;
-  if (digits !== undefined) return decimal(scientific(ratio, digits), 0);
-  for (let count = 1; count < 17; count++) {
-    const text = ratio.toExponential(count - 1);
-    if (Number(text) * unit.factor === value) return decimal(text, 0);
-  }
-  return decimal(ratio.toExponential(16), 0);
+  const count = digits ?? fewestDigits(value, unit) ?? 17;
+  return decimal((value / unit.factor).toExponential(count - 1), 0);
 }
 
 const scientific = (value: number, digits: number | undefined): string =>

@@ -7,6 +7,7 @@ import {
   ELECTRON_MASS,
   ELEMENTARY_CHARGE_C,
   HARTREE_J,
+  KILOGRAM,
 } from "../../src/units/constants.js";
 import {
   formatQuantity,
@@ -182,6 +183,10 @@ describe("formatQuantity", () => {
     [0.05, "voltage", undefined, "50 mV"],
     [0.067 * ELECTRON_MASS, "mass", undefined, "0.067 m_e"],
     [86.909 * ATOMIC_MASS, "mass", undefined, "86.909 u"],
+    [0.5 * ATOMIC_MASS + 1, "mass", undefined, "0.5000964853320219 u"],
+    [1.67e-27 * KILOGRAM, "mass", undefined, "1.67e-27 kg"],
+    [1822.888 * ELECTRON_MASS, "mass", undefined, "1822.888 m_e"],
+    [0.1 * ATOMIC_MASS, "mass", undefined, "0.1 u"],
     [ATOMIC_MASS, "mass", "m_e", "1822.8884862827601 m_e"],
     [0.3, "energy", "meV", "300 meV"],
     [0.1 + 0.2, "energy", undefined, "0.30000000000000004 eV"],
