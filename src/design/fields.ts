@@ -1,4 +1,5 @@
 import type { QuantityParameter } from "../potentials/shape.js";
+import { steppers } from "../steppers/registry.js";
 
 type Fields = Readonly<Record<string, QuantityParameter>>;
 
@@ -11,9 +12,11 @@ export const MOST_POINTS = 2 ** 24;
 export const FINEST_ACCURACY = 1e-13;
 export const COARSEST_ACCURACY = 0.5;
 /** Orders in the time step that some stepper offers. */
-export const ORDERS = [2, 4, 6] as const;
+export const ORDERS: readonly number[] = [...new Set(steppers.flatMap(({ orders }) => orders))].sort(
+  (a, b) => a - b,
+);
 /** Names of the steppers that can be forced. */
-export const STEPPER_NAMES = ["split-operator", "crank-nicolson"] as const;
+export const STEPPER_NAMES: readonly string[] = steppers.map(({ name }) => name);
 /** Longest title, so that it fits a figure's heading. */
 export const LONGEST_TITLE = 200;
 

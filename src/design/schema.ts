@@ -198,7 +198,7 @@ function choice(names: readonly string[], description: string) {
 }
 
 function orderSchema() {
-  const list = "2, 4 or 6";
+  const list = ORDERS.join(", ").replace(/, (?=[^,]*$)/, " or ");
   const error = ({ input }: Issue) =>
     faultText(
       `an order of ${list} is needed; got ${describeValue(input)}`,
