@@ -1,5 +1,4 @@
 import type { Potential } from "../potentials/potential.js";
-import { stepperNamed, steppers } from "../steppers/registry.js";
 import { formatQuantity } from "../units/quantity.js";
 import type { Problem } from "./provenance.js";
 import type { DesignData } from "./schema.js";
@@ -22,17 +21,6 @@ export function packetProblem({ packet }: DesignData): Problem | undefined {
     return { path: ["packet", "energySpread"], problem, help, target: "key" };
   }
   return undefined;
-}
-
-/** An order that the stepper asked for does not offer. */
-export function stepperProblem({ numerics }: DesignData): Problem | undefined {
-  const { stepper, order } = numerics;
-  const orders = stepperNamed(stepper ?? "")?.orders;
-  if (orders === undefined || order === undefined || orders.includes(order)) return undefined;
-  const others = steppers.filter((each) => each.orders.includes(order)).map(({ name }) => name);
-  const problem = `${stepper} offers order ${orders.join(", ")} alone; got ${order}`;
-  const help = `Order ${order} is offered by ${others.join(", ")}. Leave order out to have it chosen.`;
-  return { path: ["numerics", "order"], problem, help, target: "value" };
 }
 
 /** Contradictions between the packet and the potential: where it starts and whether its energy is enough. */

@@ -3,7 +3,7 @@ import { ParameterError } from "../potentials/shape.js";
 import { shifted } from "../potentials/shifted.js";
 import type { Design } from "../problem/design.js";
 import { HBAR } from "../units/constants.js";
-import { packetProblem, startProblem, stepperProblem } from "./checks.js";
+import { packetProblem, startProblem } from "./checks.js";
 import { canonicalSha256 } from "./describe.js";
 import type { ReadDesignOptions } from "./options.js";
 import { parsePath, valueAt } from "./path.js";
@@ -25,7 +25,7 @@ export function readDesign(text: string, options: ReadDesignOptions = {}): Desig
 /** The design of a resolved one; the second half of `readDesign`. @throws DesignError */
 export function designOf(resolved: ResolvedDesign): Design {
   const { data, provenance } = resolved;
-  const contradiction = packetProblem(data) ?? stepperProblem(data);
+  const contradiction = packetProblem(data);
   if (contradiction !== undefined) throw provenance.error(contradiction);
   const potential = buildPotential(resolved);
   const misfit = startProblem(data, potential);

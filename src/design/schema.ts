@@ -202,7 +202,7 @@ function orderSchema() {
   const error = ({ input }: Issue) =>
     faultText(
       `an order of ${list} is needed; got ${describeValue(input)}`,
-      "The order in the time step; not every stepper offers all.",
+      "The order in the time step.",
     );
   return z.literal([...ORDERS], { error }).meta({ description: `order in the time step: ${list}` });
 }

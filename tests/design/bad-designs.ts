@@ -413,11 +413,6 @@ export const BAD_DESIGNS: readonly BadDesign[] = [
     message: "a.yaml:16:10: numerics.order: an order of 2, 4 or 6 is needed; got 3",
   },
   {
-    what: "order that the stepper does not offer",
-    text: line(16, "  stepper: crank-nicolson", "  order: 4"),
-    message: "a.yaml:17:10: numerics.order: crank-nicolson offers order 2 alone; got 4",
-  },
-  {
     what: "mistyped stepper",
     text: line(16, "  stepper: crank-nicholson"),
     message:
