@@ -1,19 +1,22 @@
 import type { DensityMap } from "../analysis/results.js";
-import { type Axis, bottomAxis, bottomRoom, frame, sideAxis, sideRoom } from "./axis.js";
+import { type Axis, bottomAxis, frame, sideAxis } from "./axis.js";
 import { type AxisUnit, axisUnit } from "./axis-unit.js";
 import { type ColourMapName, colourTable, DEFAULT_COLOUR_MAP, paint } from "./colour.js";
 import { colourBar } from "./colour-bar.js";
 import { DEFAULT_DECADES, type DensityScale, densityScale, type ScaleKind } from "./density-scale.js";
-import { type Box, type Figure, figureSize, snapBox } from "./figure.js";
+import { type Box, type Figure, figureSize } from "./figure.js";
+import { layOut, type MapAxes, titleText } from "./map-layout.js";
+import { cells, cropped, type MapWindow, type WindowOptions, windowOf } from "./map-window.js";
 import { energyRange, massStretches, type Profile, pointsOf, sampleProfile } from "./profile.js";
-import { massText, meanEnergyText, type ProfilePanel, profilePanel } from "./profile-panel.js";
+import { type ProfilePanel, profilePanel } from "./profile-panel.js";
 import { resample } from "./resample.js";
 import { straight } from "./svg.js";
-import { symbol, textAt, textWidth, wrapText } from "./text.js";
-import { baseSize, INK, PAPER, TICK_TEXT, TITLE_TEXT } from "./theme.js";
+import { symbol } from "./text.js";
+import { baseSize, PAPER } from "./theme.js";
 import { linearTicks, superscript } from "./ticks.js";
 
-export interface MapFigureOptions {
+/** How a map is drawn; xFromNm and its like show a part of it. */
+export interface MapFigureOptions extends WindowOptions {
   readonly title: string;
   /** Linear from zero (default), or logarithmic. */
   readonly scale?: ScaleKind;
@@ -21,11 +24,6 @@ export interface MapFigureOptions {
   readonly decades?: number;
   /** Mean energy of the packet on the scale of V, eV: drawn as a dashed line. */
   readonly meanEnergyEv?: number;
-  /** Part of the map to show; default all of it. */
-  readonly xFromNm?: number;
-  readonly xToNm?: number;
-  readonly tFromFs?: number;
-  readonly tToFs?: number;
   /** Print size and resolution; defaults below. */
   readonly widthMm?: number;
   readonly heightMm?: number;
@@ -39,14 +37,6 @@ export const DEFAULT_WIDTH_MM = 160;
 export const DEFAULT_HEIGHT_RATIO = 0.7;
 /** Resolution that printers of journals ask of figures in half-tones (common practice, no source). */
 export const DEFAULT_DPI = 300;
-
-/** The window of the map that is drawn, in nm and fs. */
-interface Window {
-  readonly xFrom: number;
-  readonly xTo: number;
-  readonly tFrom: number;
-  readonly tTo: number;
-}
 
 /**
  * Draws |psi(x, t)|^2 as a figure: x to the right, time upward, with axes, a colour bar, and the potential's profile
@@ -97,52 +87,9 @@ export function mapFigure(map: DensityMap, profile: Profile, options: MapFigureO
   };
 }
 
-/** The window asked for, which has to lie within the map. */
-function windowOf(map: DensityMap, options: MapFigureOptions): Window {
-  const { xFromNm = map.xFrom, xToNm = map.xTo, tFromFs = map.tFrom, tToFs = map.tTo } = options;
-  const inside = xFromNm >= map.xFrom && xToNm <= map.xTo && tFromFs >= map.tFrom && tToFs <= map.tTo;
-  if (!inside || !(xToNm > xFromNm) || !(tToFs > tFromFs))
-    throw new RangeError(
-      `the part of the map to draw must lie within x = ${map.xFrom} to ${map.xTo} nm and t = ${map.tFrom} to ${map.tTo} fs; ` +
-        `got x = ${xFromNm} to ${xToNm} nm, t = ${tFromFs} to ${tToFs} fs`,
-    );
-  return { xFrom: xFromNm, xTo: xToNm, tFrom: tFromFs, tTo: tToFs };
-}
-
-/** The window in cells of the map. */
-function cells(map: DensityMap, window: Window) {
-  const column = (x: number) => ((x - map.xFrom) / (map.xTo - map.xFrom)) * map.columns;
-  const row = (t: number) => ((t - map.tFrom) / (map.tTo - map.tFrom)) * map.rows;
-  return {
-    columnFrom: column(window.xFrom),
-    columnTo: column(window.xTo),
-    rowFrom: row(window.tFrom),
-    rowTo: row(window.tTo),
-  };
-}
-
-/** The densities of all cells that the window touches: the colours are made for these. */
-function cropped(map: DensityMap, window: Window): Float64Array {
-  const { columnFrom, columnTo, rowFrom, rowTo } = cells(map, window);
-  const [left, right] = [Math.floor(columnFrom), Math.min(Math.ceil(columnTo), map.columns)];
-  const [first, last] = [Math.floor(rowFrom), Math.min(Math.ceil(rowTo), map.rows)];
-  const shown = new Float64Array((right - left) * (last - first));
-  for (let row = first; row < last; row++)
-    shown.set(
-      map.density.subarray(row * map.columns + left, row * map.columns + right),
-      (row - first) * (right - left),
-    );
-  return shown;
-}
-
-interface MapAxes {
-  readonly x: Axis;
-  readonly time: Axis;
-  readonly density: Axis;
-}
-
+/** The axes of map and colour bar, in units that fit. */
 function mapAxes(
-  window: Window,
+  window: MapWindow,
   lengthUnit: AxisUnit,
   scale: DensityScale,
   size: { width: number; height: number },
@@ -177,9 +124,10 @@ function mapAxes(
   };
 }
 
+/** All that the panel above the map shows. */
 function panelOf(
   profile: Profile,
-  window: Window,
+  window: MapWindow,
   lengthUnit: AxisUnit,
   columns: number,
   options: MapFigureOptions,
@@ -210,60 +158,8 @@ function panelOf(
   };
 }
 
-interface Boxes {
-  readonly map: Box;
-  readonly profile: Box;
-  readonly bar: Box;
-  readonly leftRoom: number;
-  readonly barRoom: number;
-  readonly titleLines: readonly string[];
-}
-
-/** Shares the page out: title, profile and map from top to bottom, the colour bar at the right of the map. */
-function layOut(
-  size: { width: number; height: number },
-  axes: MapAxes,
-  panel: ProfilePanel,
-  title: string,
-  em: number,
-  dpi: number,
-): Boxes {
-  const margin = 0.5 * em;
-  const leftRoom = sideRoom([panel.axis, axes.time], em);
-  const barRoom = sideRoom([axes.density], em);
-  const mass = massText(panel.stretches);
-  const noteWidths = meanEnergyText(panel).map((text) => textWidth(text, TICK_TEXT * em));
-  if (mass !== undefined) noteWidths.push(textWidth(mass, TICK_TEXT * em) + 1.1 * em);
-  const barWidth = 1.1 * em;
-  const barGap = 0.7 * em;
-  const rightRoom = Math.max(barGap + barWidth + barRoom, 0.4 * em + Math.max(0, ...noteWidths));
-  const left = margin + leftRoom;
-  const width = size.width - left - rightRoom - margin;
-  const titleLines = wrapText(title, size.width - 2 * margin - em, TITLE_TEXT * em, 2, "bold");
-  const top = margin + (titleLines.length * 1.3 + (titleLines.length > 0 ? 0.35 : 0.3)) * em;
-  const bottom = size.height - margin - bottomRoom(em);
-  const gap = 0.75 * em;
-  // A quarter of the height, but enough for the notes beside the panel.
-  const profileHeight = Math.max(0.27 * (bottom - top - gap), 4.5 * em);
-  const profile = snapBox({ x: left, y: top, width, height: profileHeight }, dpi);
-  const mapTop = profile.y + profile.height + gap;
-  const map = snapBox({ x: left, y: mapTop, width, height: bottom - mapTop }, dpi);
-  const bar = snapBox({ x: left + width + barGap, y: map.y, width: barWidth, height: map.height }, dpi);
-  return { map, profile, bar, leftRoom, barRoom, titleLines };
-}
-
-function titleText({ map, titleLines }: Boxes, em: number): string[] {
-  // Flush with the axes where the title fits above the map; a longer one starts at the left edge of the page.
-  const size = TITLE_TEXT * em;
-  const longest = Math.max(0, ...titleLines.map((line) => textWidth(line, size, "bold")));
-  const x = longest <= map.width ? map.x : 0.5 * em;
-  return titleLines.map((text, i) =>
-    textAt([{ text }], { x, y: (1.4 + 1.3 * i) * em, size, bold: true, fill: INK }),
-  );
-}
-
 /** Thin lines through the map where the structure begins and ends; none for a smooth potential. */
-function guides(box: Box, profile: Profile, window: Window, em: number): string {
+function guides(box: Box, profile: Profile, window: MapWindow, em: number): string {
   const { interfaces } = profile;
   if (interfaces.length === 0) return "";
   const place = (x: number) => box.x + ((x - window.xFrom) / (window.xTo - window.xFrom)) * box.width;
@@ -280,6 +176,7 @@ function guides(box: Box, profile: Profile, window: Window, em: number): string 
   return inside.map((x) => straight(place(x), box.y, place(x), box.y + box.height, stroke)).join("");
 }
 
+/** The figure in words. */
 function describe({ x, time }: MapAxes, scale: DensityScale): string {
   const words = (axis: Axis) => axis.label.map(({ text }) => text).join("");
   return (

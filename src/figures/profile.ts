@@ -47,17 +47,19 @@ export function sampleProfile(profile: Profile, from: number, to: number, sample
   const inside = (right - left) / SAMPLES_INSIDE;
   const coarse = (to - from) / samples;
   const ends = pieces(profile, from, to);
+  const jumps = new Set(profile.interfaces);
   for (let n = 1; n < ends.length; n++) {
     const [a, b] = [ends[n - 1], ends[n]];
     const step = a < right && b > left && inside > 0 ? Math.min(coarse, inside) : coarse;
     const count = Math.max(1, Math.ceil((b - a) / step));
     // At an interface value() gives the mean: the sides are taken a billionth of the piece away from it.
-    add(a, profile.value(a + 1e-9 * (b - a)));
+    const away = 1e-9 * (b - a);
+    add(a, profile.value(jumps.has(a) ? a + away : a));
     for (let i = 1; i < count; i++) {
       const place = a + (i * (b - a)) / count;
       add(place, profile.value(place));
     }
-    add(b, profile.value(b - 1e-9 * (b - a)));
+    add(b, profile.value(jumps.has(b) ? b - away : b));
   }
   return { x, energy };
 }

@@ -24,7 +24,7 @@ const BASE_POINTS = 12;
 const LEAST_POINTS = 6.4;
 
 /** A flat figure gets the letters of one with this width over its height. */
-const GREATEST_ASPECT = 1.8;
+const GREATEST_ASPECT = 2;
 
 /** The base font size (em) of a figure in CSS pixels. */
 export function baseSize(widthMm: number, heightMm: number): number {

@@ -70,22 +70,29 @@ export function checkFolder(dir: string): void {
 }
 
 async function commit(dir: string, files: Readonly<Record<string, Content>>): Promise<void> {
-  const staging = openStaging(dir);
-  const release = whenEnding(staging.remove);
+  let staging: Staging | undefined;
+  const release = whenEnding(() => staging?.remove());
   try {
+    staging = openStaging(dir);
     for (const [name, content] of Object.entries(files))
       await writeDurably(join(staging.path, name), content);
     for (const name of Object.keys(files)) refuseOther(join(dir, name));
     // Without a pause, so that no signal comes between two files.
     for (const name of Object.keys(files)) renameSync(join(staging.path, name), join(dir, name));
   } finally {
-    staging.remove();
+    staging?.remove();
     await release();
   }
 }
 
-/** Creates the folder and, in it, one for the temporary files; `remove` takes back what is still empty or temporary. */
-function openStaging(dir: string): { readonly path: string; remove(): void } {
+/** A folder for temporary files; `remove` takes it back, and the folders made for it that are empty. */
+interface Staging {
+  readonly path: string;
+  remove(): void;
+}
+
+/** Creates the folder for the output and, in it, the one for its temporary files. */
+function openStaging(dir: string): Staging {
   if (statSync(dir, { throwIfNoEntry: false })?.isDirectory() === false)
     throw new OutputError(dir, "this is a file, and a folder is needed; choose another name or remove it");
   const created = mkdirSync(dir, { recursive: true });
@@ -138,27 +145,38 @@ function removeEmpty(dir: string, created: string | undefined): void {
   }
 }
 
+/** What is to be undone when the program ends, one entry for each output being written. */
+const pending = new Set<() => void>();
+
+function undoAll(): void {
+  for (const undo of pending) undo();
+}
+
+/** Where somebody else listens to the signal, the few milliseconds of writing go on; else it ends the program. */
+function stop(signal: NodeJS.Signals): void {
+  if (process.listenerCount(signal) > 1) return;
+  undoAll();
+  listen("off");
+  process.kill(process.pid, signal);
+}
+
+function listen(change: "on" | "off"): void {
+  process[change]("exit", undoAll);
+  for (const signal of SIGNALS) process[change](signal, stop);
+}
+
 /**
- * Has `undo` done when the program ends in the meantime. A signal that nobody else listens to does both: it undoes, and
- * still ends the program; where somebody does, the few milliseconds of writing go on.
+ * Has `undo` done when the program ends in the meantime, by a signal too.
  *
  * @returns a function that takes this back, once any signal that has already arrived is dealt with
  */
 function whenEnding(undo: () => void): () => Promise<void> {
-  const stop = (signal: NodeJS.Signals) => {
-    if (process.listenerCount(signal) > 1) return;
-    undo();
-    off();
-    process.kill(process.pid, signal);
-  };
-  const off = () => {
-    process.off("exit", undo);
-    for (const signal of SIGNALS) process.off(signal, stop);
-  };
-  process.on("exit", undo);
-  for (const signal of SIGNALS) process.on(signal, stop);
+  if (pending.size === 0) listen("on");
+  pending.add(undo);
   return async () => {
-    await new Promise((next) => setImmediate(next));
-    off();
+    // Two turns of the event loop: a signal that came while files were renamed is seen in the second one.
+    for (let turn = 0; turn < 2; turn++) await new Promise((next) => setImmediate(next));
+    pending.delete(undo);
+    if (pending.size === 0) listen("off");
   };
 }

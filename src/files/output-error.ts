@@ -18,6 +18,7 @@ const REASONS: Readonly<Record<string, string>> = {
   EPERM: "the system does not permit writing here; choose another place",
   EROFS: "this file system can only be read; choose another place",
   ENOSPC: "the disk is full; nothing was written",
+  EFBIG: "the file would be larger than the system permits; nothing was written",
   EDQUOT: "the disk quota is used up; nothing was written",
   EISDIR: "there is a folder of this name; choose another name or remove it",
   ENOTDIR: "a part of this path is a file, not a folder",

@@ -34,11 +34,10 @@ export function encodePng(
   if (channels !== 3 && channels !== 4)
     throw new RangeError(`${columns} x ${rows} pixels need 3 or 4 bytes each; got ${pixels.length} bytes`);
   const png = new PNG({ width: 1, height: 1 });
-  Object.assign(png, {
-    width: columns,
-    height: rows,
-    data: Buffer.from(channels === 4 ? dropAlpha(pixels) : pixels),
-  });
+  const colours = channels === 4 ? dropAlpha(pixels) : pixels;
+  const data = Buffer.from(colours.buffer, colours.byteOffset, colours.byteLength);
+  // Set afterwards: the constructor would allocate an image of its own.
+  Object.assign(png, { width: columns, height: rows, data });
   // Large areas of one colour: no filter and the plain strategy are both faster and smaller than the defaults.
   const file = PNG.sync.write(png, {
     colorType: 2,

@@ -60,10 +60,13 @@ function copyRaster(pixels: Uint8Array, figure: Figure, raster: Raster): void {
 
 /** Lays RGBA pixels over RGB ones. The renderer has multiplied colours by alpha: result = over + under (1 - alpha). */
 function cover(under: Uint8Array, over: Uint8Array): void {
-  for (let from = 0, to = 0; from < over.length; from += 4, to += 3) {
-    const alpha = over[from + 3];
-    if (alpha === 0) continue;
-    const rest = 1 - alpha / 255;
+  // Most pixels are empty: looking at all four bytes at once takes a third of the time.
+  const whole = new Uint32Array(over.buffer, over.byteOffset, over.length / 4);
+  for (let pixel = 0; pixel < whole.length; pixel++) {
+    if (whole[pixel] === 0) continue;
+    const from = 4 * pixel;
+    const to = 3 * pixel;
+    const rest = 1 - over[from + 3] / 255;
     for (let part = 0; part < 3; part++)
       under[to + part] = Math.round(over[from + part] + under[to + part] * rest);
   }
