@@ -1,0 +1,15 @@
+/** What one call of the program shares between its parts. */
+export interface Session {
+  /** Aborts with an `Interrupted` as its reason when the user presses Ctrl-C. */
+  readonly signal: AbortSignal;
+  /** What the program ends with when nothing is thrown. */
+  exitCode: number;
+}
+
+/** The reason of a session's signal. */
+export class Interrupted extends Error {
+  constructor() {
+    super("interrupted");
+    this.name = "Interrupted";
+  }
+}
