@@ -1,3 +1,4 @@
+import type { Recorder } from "./analysis/recorder.js";
 import type { Stepper } from "./steppers/stepper.js";
 
 /** A calculation that is ready to go: the stepper, the state at t = 0 (changed in place), and how far to go. */
@@ -6,12 +7,6 @@ export interface Run {
   /** Interleaved complex state, 1/sqrt(nm). */
   readonly psi: Float64Array;
   readonly steps: number;
-}
-
-/** Looks at the state at t = 0 and after every `every`-th step and the last one. Must not change the state. */
-export interface Recorder {
-  readonly every: number;
-  record(time: number, psi: Float64Array): void;
 }
 
 export interface PropagateOptions {

@@ -6,9 +6,9 @@ import { type Grid, periodicGrid } from "./grid.js";
 import type { Departure, Room } from "./journey.js";
 
 /** Spacing of the first, coarsest circle: this phase per spacing at the packet's largest wavenumber, ... */
-const FIRST_PHASE = 1;
+const FIRST_PHASE = 1.2;
 /** ... this share of the length over which a smooth V changes. Tuned against check-values 3.6, sech2. */
-const FIRST_SHARE = 0.4;
+const FIRST_SHARE = 0.55;
 
 /** Largest spacing (nm) that a circle should start from for this packet and structure. */
 export function firstSpacing(potential: Potential, from: Departure): number {

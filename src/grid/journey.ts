@@ -10,8 +10,8 @@ import { HBAR } from "../units/constants.js";
 
 /** Distance of the packet's centre from the structure, in its own widths: |psi| at the face is exp(-36) of its peak. */
 export const CLEARANCE_WIDTHS = 12;
-/** Spreads of k to either side that a calculation follows; the weight beyond is 1e-19. */
-const FOLLOWED_SPREADS = 9;
+/** Spreads of k to either side that a box must have room for; the weight beyond is 3e-14. */
+const FOLLOWED_SPREADS = 7.5;
 /** Spreads of k to either side that must travel at a good speed; the weight beyond is 1e-9 and arrives later. */
 const PROMPT_SPREADS = 6;
 /** Widths of the packet kept free between it and what may come back from an end of the box. */
@@ -43,13 +43,13 @@ export interface Departure {
 }
 
 /** Places the packet clear of the structure, unless the design says where it starts. */
-export function departure(design: Design): Departure {
+export function departure(design: Design, clearance = CLEARANCE_WIDTHS): Departure {
   const { potential, packet, particleMass: mass } = design;
   const fromLeft = packet.from === "left";
   const direction = fromLeft ? 1 : -1;
   const [faceLeft, faceRight] = potential.faces;
   const face = fromLeft ? faceLeft : faceRight;
-  const center = packet.start ?? face - direction * CLEARANCE_WIDTHS * packet.width;
+  const center = packet.start ?? face - direction * clearance * packet.width;
   const k0 = wavenumberOf(packet.energy, mass);
   const spread = wavenumberSpread(packet.width);
   const near = fromLeft ? potential.levelLeft : potential.levelRight;

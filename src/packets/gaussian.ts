@@ -29,6 +29,11 @@ export function wavenumberSpread(width: number): number {
   return 1 / (2 * width);
 }
 
+/** |phi(k)|^2 = sqrt(2/pi) sigma exp(-2 sigma^2 (k - k0)^2), probability per wavenumber, nm. */
+export function wavenumberWeight(k: number, k0: number, width: number): number {
+  return Math.sqrt(2 / Math.PI) * width * Math.exp(-2 * width * width * (k - k0) ** 2);
+}
+
 /** Probability that the packet's |k| lies above `k` in its own direction of travel (k0 counted positive). */
 export function weightAbove(k: number, k0: number, width: number): number {
   return normalTail((k - k0) / wavenumberSpread(width));

@@ -36,6 +36,10 @@ export interface Calculation {
   /** Whole calculations that the answer was put together from. */
   readonly runs: readonly RunSummary[];
   readonly checks: readonly Check[];
+  /** T at the packet's mean energy, from the same calculations. */
+  readonly atMeanEnergy: Bounded;
+  /** Total energy (eV) at which most of what got through was carried: the peak of its energy distribution. */
+  readonly carryingEnergy: number;
 }
 
 /** One whole calculation among those that an answer rests on. */

@@ -14,6 +14,7 @@ import { atMost, type Calculation, type RunSummary, type StudyOptions } from "./
 import { commonChecks, structureLength } from "./common-checks.js";
 import { forcedRoom } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
+import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { type Outcome, runToEnd } from "./outcome.js";
 
 /** Cells of the successive calculations in units of the unrefined grid's. Tuned for least work to 1e-6 on check-values 3.6. */
@@ -94,6 +95,7 @@ interface Attempt {
   readonly outcomes: readonly { readonly refinement: number; readonly outcome: Outcome }[];
   readonly transmission: Extrapolation;
   readonly reflection: Extrapolation;
+  readonly atMean: Extrapolation;
 }
 
 /** Refines until the bound is met, or only measures the first grid when that already shows that too much remains. */
@@ -105,6 +107,7 @@ async function attemptAt(
 ): Promise<Attempt> {
   const transmission = new Extrapolation();
   const reflection = new Extrapolation();
+  const atMean = new Extrapolation();
   const outcomes: { refinement: number; outcome: Outcome }[] = [];
   for (const refinement of plan.forced ? [1] : REFINEMENTS) {
     const points = alignedPoints(plan.stretches, refinement);
@@ -127,10 +130,11 @@ async function attemptAt(
     outcomes.push({ refinement, outcome });
     const t = transmission.add(1 / refinement, outcome.transmitted);
     reflection.add(1 / refinement, outcome.reflected);
+    atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
     if (tooMuchRemains(outcome, accuracy)) break;
     if (t.error <= 0.5 * accuracy * t.value && outcomes.length > 2) break;
   }
-  return { outcomes, transmission, reflection };
+  return { outcomes, transmission, reflection, atMean };
 }
 
 function tooMuchRemains(outcome: Outcome, accuracy: number): boolean {
@@ -189,6 +193,14 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
         transmission: o.outcome.transmitted,
       }),
     ),
+    atMeanEnergy: boundedAtMean(
+      attempt.atMean.result.value,
+      Math.min(1, attempt.atMean.result.error),
+      outcome,
+      plan.from,
+      structureLength(design.potential),
+    ),
+    carryingEnergy: carryingEnergy(outcome, plan.from),
     checks: [
       ...commonChecks(design, plan.from, outcome, drift, accuracy, t.value),
       atMost(

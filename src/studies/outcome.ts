@@ -1,6 +1,7 @@
-import { core, divide, norm, type Shares, shares } from "../analysis/probabilities.js";
+import { gridWave, wavenumberDensity } from "../analysis/energy-spectrum.js";
+import { core, type Division, divide, norm, type Shares, shares } from "../analysis/probabilities.js";
 import type { Departure } from "../grid/journey.js";
-import { sampleGaussian } from "../packets/gaussian.js";
+import { sampleGaussian, wavenumberWeight } from "../packets/gaussian.js";
 import { propagate } from "../propagate.js";
 import type { Stepper } from "../steppers/stepper.js";
 import type { StudyOptions } from "./calculation.js";
@@ -16,6 +17,8 @@ export interface Outcome {
   readonly drift: number;
   /** Norm of the sampled packet minus one: how well the grid holds it. */
   readonly sampling: number;
+  /** T at a total energy (eV) from the final state's own plane waves; undefined where the packet has no weight or no wave. */
+  readonly transmissionAt: (energy: number) => number | undefined;
 }
 
 /**
@@ -63,5 +66,30 @@ export async function runToEnd(
     unfinished: (parts.inside + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
     drift: Math.abs(total - start) / start,
     sampling: Math.abs(start - 1),
+    transmissionAt: (energy) => transmissionAt(energy, psi, stepper, from, division),
   };
+}
+
+/**
+ * T(E) = (rho_far(k) / slope_far) / (rho_near(k) / slope_near): probability per energy of what got through over that of what came, each
+ * on the plane waves of the grid at that very energy. rho_near is the Gaussian's own closed form.
+ */
+function transmissionAt(
+  energy: number,
+  psi: Float64Array,
+  { system }: Stepper,
+  from: Departure,
+  division: Division,
+): number | undefined {
+  const { grid } = system;
+  const spectral = grid.ends === "periodic";
+  const [left, right] = [grid.spacing[0], grid.spacing[grid.spacing.length - 1]];
+  const [nearStep, farStep] = spectral ? [0, 0] : from.direction > 0 ? [left, right] : [right, left];
+  const near = gridWave(energy - from.near, from.mass, nearStep);
+  const far = gridWave(energy - from.far, from.mass, farStep);
+  if (!near || !far) return undefined;
+  const came = wavenumberWeight(near.k, from.k0, from.packet.width) / near.slope;
+  const [a, b] = from.direction > 0 ? [division.end, division.seam] : [0, division.first];
+  const got = wavenumberDensity(psi, grid, a, b, from.direction * far.k) / far.slope;
+  return came > 0 ? got / came : undefined;
 }

@@ -15,16 +15,31 @@ import { atMost, type Calculation, type Check, type RunSummary, type StudyOption
 import { commonChecks, structureLength } from "./common-checks.js";
 import { forcedRoom } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
+import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { type Outcome, runToEnd } from "./outcome.js";
 
-/** Order taken unless asked otherwise: least work to 1e-10 on the sech2 barrier of check-values 5.2. */
-const AUTOMATIC_ORDER = 4;
-/** First time step of an automatic calculation in units of hbar over the largest kinetic energy in the structure, by order. */
-const FIRST_TIME_PHASE: Readonly<Record<number, number>> = { 2: 0.1, 4: 0.5, 6: 1 };
+/**
+ * Order taken unless asked otherwise: least work to that accuracy on the sech2 barrier of check-values 5.2. Where V has jumps the kinetic phase
+ * limits the step, not the order.
+ */
+const orderFor = (jumps: boolean, accuracy: number): number => (jumps ? 2 : accuracy < 1e-8 ? 6 : 4);
+/**
+ * First time step in units of 1/rate (see `fastestRate`) for the accuracy beside it; the error falls with the order's power.
+ * Tuned so that one halving suffices on the sech2 barrier of check-values 3.6.
+ */
+const FIRST_TIME_PHASE: Readonly<Record<number, { readonly phase: number; readonly accuracy: number }>> = {
+  2: { phase: 0.1, accuracy: 1e-6 },
+  4: { phase: 1.6, accuracy: 1e-6 },
+  6: { phase: 0.7, accuracy: 1e-10 },
+};
+/** Share of the change on halving the step that the extrapolated value is believed within, by order: over twice what was seen on check-values 3.6. */
+const TIME_CAUTION: Readonly<Record<number, number>> = { 2: 0.5, 4: 0.15, 6: 0.06 };
 const REMAINING_SHARE = 0.1;
 const PROLONGATION = 1.4;
 /** Work (points times transforms) after which nothing is refined or prolonged any more. */
-const WORK_LIMIT = 1.5e9;
+/** Start of the packet in its own widths from the structure; a transform's rounding hides what is smaller than this leaves. */
+const CLEARANCE = 10;
+const WORK_LIMIT = 8e8;
 const POINTS_LIMIT = 2 ** 20;
 
 /** All that is fixed before the first step. */
@@ -46,10 +61,10 @@ function largestDrift(order: number): number {
 }
 
 /** Plans the calculation on a circle that ends at `end` (fs; automatic when undefined). */
-export function planCircle(design: Design, end?: number): CirclePlan {
+export function planCircle(design: Design, accuracy: number, end?: number): CirclePlan {
   const { numerics, potential, packet } = design;
-  const from = departure(design);
-  const order = numerics.order ?? AUTOMATIC_ORDER;
+  const from = departure(design, CLEARANCE);
+  const order = numerics.order ?? orderFor(potential.slopeTransform !== undefined, accuracy);
   const reach = from.distance + structureLength(potential) + 6 * packet.width;
   const wanted = numerics.end ?? end ?? passage(from, reach, exact);
   const room = forcedRoom(design, from, roomFor(from, wanted, exact, "untouched"));
@@ -63,10 +78,7 @@ export function planCircle(design: Design, end?: number): CirclePlan {
       "potential",
       `the split operator would need ${circle.points} points for this design, more than ${POINTS_LIMIT}; use crank-nicolson`,
     );
-  const phase = FIRST_TIME_PHASE[order] ?? FIRST_TIME_PHASE[2];
-  const timeStep =
-    numerics.timeStep ??
-    (phase * HBAR) / Math.max(from.highest - potential.lowest, potential.highest - potential.lowest);
+  const timeStep = numerics.timeStep ?? firstTimeStep(order, accuracy, fastestRate(design, from));
   return {
     from,
     order,
@@ -76,6 +88,21 @@ export function planCircle(design: Design, end?: number): CirclePlan {
     forcedSpace: numerics.step !== undefined || numerics.points !== undefined,
     forcedTime: numerics.timeStep !== undefined,
   };
+}
+
+function firstTimeStep(order: number, accuracy: number, rate: number): number {
+  const { phase, accuracy: tuned } = FIRST_TIME_PHASE[order] ?? FIRST_TIME_PHASE[2];
+  return (phase * Math.min(2, (accuracy / tuned) ** (1 / order))) / rate;
+}
+
+/** Rate (1/fs) at which a splitting is taxed: that of the kinetic energy in the structure and that of a swing in its curvature. */
+function fastestRate({ potential, particleMass }: Design, from: Departure): number {
+  const range = potential.highest - potential.lowest;
+  const energy = Math.max(from.highest - potential.lowest, range);
+  const swing = Number.isFinite(potential.scale)
+    ? Math.sqrt((2 * range) / particleMass) / potential.scale
+    : 0;
+  return energy / HBAR + swing;
 }
 
 /** Whole calculations on circles refined s times in space and t times in time, each done once. */
@@ -145,6 +172,8 @@ interface Standing {
   readonly reflection: number;
   readonly spacing: number;
   readonly time: number;
+  readonly atMean: number;
+  readonly atMeanError: number;
 }
 
 /**
@@ -156,10 +185,20 @@ export async function splitOperatorTransmission(
   accuracy: number,
   options: StudyOptions,
 ): Promise<Calculation> {
-  let plan = planCircle(design);
+  let plan = planCircle(design, accuracy);
   let spent = 0;
   for (;;) {
     const calculations = new Calculations(design, plan, options);
+    // The cheapest calculation tells whether the end is late enough.
+    if (
+      !plan.forcedTime &&
+      !plan.forcedSpace &&
+      !design.potential.slopeTransform &&
+      (await isTooEarly(calculations, design, accuracy))
+    ) {
+      plan = planCircle(design, accuracy, plan.end * PROLONGATION);
+      continue;
+    }
     const standing = await refine(calculations, plan, design, accuracy, spent);
     spent += calculations.work;
     const late =
@@ -167,12 +206,21 @@ export async function splitOperatorTransmission(
       design.numerics.end === undefined &&
       spent < WORK_LIMIT / 4;
     if (!late) return summary(design, plan, calculations, standing, accuracy);
-    plan = planCircle(design, plan.end * PROLONGATION);
+    plan = planCircle(design, accuracy, plan.end * PROLONGATION);
   }
 }
 
 function tooMuchRemains(outcome: Outcome, accuracy: number): boolean {
   return outcome.unfinished > REMAINING_SHARE * accuracy * outcome.transmitted;
+}
+
+async function isTooEarly(calculations: Calculations, design: Design, accuracy: number): Promise<boolean> {
+  const outcome = await calculations.at(0, 0);
+  return (
+    design.numerics.end === undefined &&
+    tooMuchRemains(outcome, accuracy) &&
+    calculations.work < WORK_LIMIT / 40
+  );
 }
 
 async function refine(
@@ -187,9 +235,9 @@ async function refine(
   for (;;) {
     // Where V has jumps, momenta up to the band's edge are populated and every drift must turn them by less than pi.
     if (!plan.forcedTime && design.potential.slopeTransform)
-      while (plan.timeStep / 2 ** (t - 1) > phaseLimit(plan, design, s)) t++;
+      while (plan.timeStep / 2 ** t > phaseLimit(plan, design, s)) t++;
     const standing = await stand(calculations, plan, design, s, t);
-    const goal = 0.5 * accuracy * standing.transmission;
+    const goal = 0.8 * accuracy * standing.transmission;
     if (standing.spacing + standing.time <= goal || tooMuchRemains(standing.outcome, accuracy))
       return standing;
     const finerSpace = !plan.forcedSpace && (standing.spacing >= standing.time || plan.forcedTime);
@@ -217,19 +265,30 @@ async function stand(
   const slower = plan.forcedTime ? outcome : await calculations.at(s, t - 1);
   const coarser = plan.forcedSpace ? outcome : await calculations.at(s - 1, t);
   const change = outcome.transmitted - slower.transmitted;
+  const [mean, meanSlower, meanCoarser] = [outcome, slower, coarser].map(
+    (o) => o.transmissionAt(plan.from.energy) ?? 0,
+  );
   // Smooth V: the declared order holds and the leading term is taken off; jumps spoil the order, so nothing is.
   const gain = jumps ? 0 : 1 / (2 ** plan.order - 1);
-  const timeCaution = jumps ? 1 : plan.order === 2 ? 0.5 : 0.25;
-  // Smooth V: halving the spacing squares the error; with jumps it falls like its third power, erratically.
-  const spaceCaution = jumps ? 1 : 0.2;
+  const timeCaution = jumps ? 1 : TIME_CAUTION[plan.order];
+  // With jumps the error falls like the third power of the spacing, erratically. Smooth V: halving squares it, so that
+  // the change is the error of the coarser grid and its own square root, cautiously enlarged, the share that is left.
+  const spaceCaution = (fine: number, coarse: number) =>
+    jumps ? 0.35 : Math.min(0.2, 5 * Math.sqrt(Math.abs(fine - coarse) / fine));
   return {
     s,
     t,
     outcome,
     transmission: outcome.transmitted + gain * change,
     reflection: outcome.reflected + gain * (outcome.reflected - slower.reflected),
-    spacing: spaceCaution * Math.abs(outcome.transmitted - coarser.transmitted),
+    spacing:
+      spaceCaution(outcome.transmitted, coarser.transmitted) *
+      Math.abs(outcome.transmitted - coarser.transmitted),
     time: timeCaution * Math.abs(change),
+    atMean: mean + gain * (mean - meanSlower),
+    atMeanError:
+      spaceCaution(mean, meanCoarser) * Math.abs(mean - meanCoarser) +
+      timeCaution * Math.abs(mean - meanSlower),
   };
 }
 
@@ -268,6 +327,14 @@ function summary(
     time: { step_fs: timeStep, end_fs: plan.end, steps },
     parts: { spacing, timeStep: time, remaining: outcome.unfinished, roundOff },
     runs: calculations.list(),
+    atMeanEnergy: boundedAtMean(
+      standing.atMean,
+      standing.atMeanError,
+      outcome,
+      plan.from,
+      structureLength(design.potential),
+    ),
+    carryingEnergy: carryingEnergy(outcome, plan.from),
     checks: [
       ...commonChecks(design, plan.from, outcome, drift, accuracy, transmission),
       ...refinementChecks(design, plan, standing, timeStep, circle, accuracy),

@@ -1,0 +1,118 @@
+import type { Bounded } from "../analysis/results.js";
+import { departure } from "../grid/journey.js";
+import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
+import { crankNicolson } from "../steppers/crank-nicolson.js";
+import { stepperNamed } from "../steppers/registry.js";
+import { splitOperator } from "../steppers/split-operator.js";
+import { atMost, type Calculation, type Check, type StudyOptions } from "./calculation.js";
+import { crankNicolsonTransmission } from "./crank-nicolson-transmission.js";
+import { isForced } from "./forced.js";
+import { DesignLimitError } from "./limits.js";
+import { splitOperatorTransmission } from "./split-operator-transmission.js";
+
+/** Asked for more than this (relative), a smooth structure goes to the split operator, which converges faster there. */
+const SPECTRAL_ACCURACY = 1e-9;
+
+/** The answer to a design: probabilities with bounds, and what the verdict rests on. */
+export interface Estimate extends Calculation {
+  readonly design: { readonly title: string; readonly sha256: string };
+  /** Relative accuracy of the transmission: what was asked for and what the bound says was reached. */
+  readonly accuracy: { readonly asked: number; readonly reached: number };
+  /** Mean energy of the packet (eV, total) and the share of it that moves away from the structure from the start. */
+  readonly meanEnergy: number;
+  readonly backward: number;
+  readonly verdict: "trusted" | "doubtful";
+  /** What a reader should know, in sentences. */
+  readonly notes: readonly string[];
+}
+
+/** The stepper that a design gets: the one it names, or the cheapest that reaches the accuracy. */
+export function chooseStepper(design: Design, accuracy: number): string {
+  const { stepper } = design.numerics;
+  const smooth = design.potential.slopeTransform === undefined && design.potential.uniformMass;
+  return stepper ?? (smooth && accuracy < SPECTRAL_ACCURACY ? splitOperator.name : crankNicolson.name);
+}
+
+/**
+ * Transmission and reflection of a design's packet, with bounds and a verdict.
+ * @returns value and bound, what remains, checks; `verdict` is "trusted" when every check passed and the bound is within the accuracy asked for.
+ * @throws DesignLimitError when the design cannot be computed as written; rejects with the signal's reason when stopped
+ * Cost: three to five whole calculations. Source: refinement by Richardson extrapolation, see numerics/extrapolation.ts.
+ */
+export async function estimate(design: Design, options: StudyOptions = {}): Promise<Estimate> {
+  if (design.potential.confining)
+    throw new DesignLimitError(
+      "potential",
+      `the ${design.potential.shape} potential confines the particle on both sides, so nothing is transmitted; use "postern map" to see the packet move`,
+    );
+  const accuracy = design.numerics.accuracy ?? DEFAULT_ACCURACY;
+  const name = chooseStepper(design, accuracy);
+  const refusal = stepperNamed(name)?.refusal(design.potential);
+  if (refusal) throw new DesignLimitError("numerics.stepper", refusal);
+  const calculate = name === splitOperator.name ? splitOperatorTransmission : crankNicolsonTransmission;
+  const own = await calculate(design, accuracy, options);
+  const calculation = isForced(design.numerics)
+    ? await heldAgainstAutomatic(own, design, accuracy, options)
+    : own;
+  return judged(design, calculation, accuracy);
+}
+
+/**
+ * A calculation with forced numerics cannot refine what was forced, so its bound is measured from outside: the
+ * distance to an automatic Crank-Nicolson calculation plus that one's own bound.
+ */
+async function heldAgainstAutomatic(
+  own: Calculation,
+  design: Design,
+  accuracy: number,
+  options: StudyOptions,
+): Promise<Calculation> {
+  const automatic = await crankNicolsonTransmission(
+    { ...design, numerics: {} },
+    Math.min(accuracy, DEFAULT_ACCURACY),
+    options,
+  );
+  const widen = (mine: Bounded, other: Bounded): Bounded => ({
+    value: mine.value,
+    error: Math.abs(mine.value - other.value) + other.error,
+  });
+  const transmission = widen(own.transmission, automatic.transmission);
+  const check = atMost(
+    "forced numerics",
+    transmission.error / own.transmission.value,
+    accuracy,
+    "relative distance to an automatic calculation, plus that one's own bound",
+  );
+  return {
+    ...own,
+    transmission,
+    reflection: widen(own.reflection, automatic.reflection),
+    atMeanEnergy: widen(own.atMeanEnergy, automatic.atMeanEnergy),
+    checks: [...own.checks.filter((c) => c.name !== "spacing"), check],
+  };
+}
+
+function judged(design: Design, calculation: Calculation, accuracy: number): Estimate {
+  const { value, error } = calculation.transmission;
+  const from = departure(design);
+  const reached = error / value;
+  const checks: Check[] = [
+    ...calculation.checks,
+    atMost(
+      "accuracy",
+      Number.isFinite(reached) ? reached : 1,
+      accuracy,
+      "bound of the transmission relative to its value, against the accuracy asked for",
+    ),
+  ].map((check) => ({ ...check, value: Number.isFinite(check.value) ? check.value : Number.MAX_VALUE }));
+  return {
+    ...calculation,
+    design: { title: design.title, sha256: design.sha256 },
+    accuracy: { asked: accuracy, reached: Number.isFinite(reached) ? reached : 1 },
+    meanEnergy: from.energy,
+    backward: from.backward,
+    checks,
+    verdict: checks.every((check) => check.passed) ? "trusted" : "doubtful",
+    notes: [],
+  };
+}
