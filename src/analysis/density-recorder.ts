@@ -14,15 +14,15 @@ export interface MapWindow {
 }
 
 /**
- * Records |psi|^2 over space and time in bounded memory: every look adds the exact cell probabilities to the columns they cover and to the
- * row of its time, so that a map has `rows` x `columns` numbers however many steps there are. Rows that no look fell
+ * Records |psi|^2 over space and time in bounded memory: every look adds the density, taken linearly between the nodes and integrated exactly
+ * over each column, to the row of its time, so that a map has `rows` x `columns` numbers however many steps there are. Rows that no look fell
  * into (fewer steps than rows) are filled in linearly between their neighbours.
  */
 export class DensityRecorder implements Recorder {
   readonly every: number;
   private readonly sums: Float64Array;
   private readonly looks: Float64Array;
-  private readonly edges: Float64Array;
+  private readonly x: Float64Array;
 
   constructor(
     grid: Grid,
@@ -37,7 +37,7 @@ export class DensityRecorder implements Recorder {
     this.every = every;
     this.sums = new Float64Array(columns * rows);
     this.looks = new Float64Array(rows);
-    this.edges = cellEdges(grid);
+    this.x = grid.x;
   }
 
   record(time: number, psi: Float64Array): void {
@@ -46,17 +46,25 @@ export class DensityRecorder implements Recorder {
     const at = time === tTo ? rows - 1 : row;
     if (at < 0 || at >= rows) return;
     this.looks[at]++;
-    const { edges, sums } = this;
-    const n = edges.length - 1;
-    const scale = columns / (xTo - xFrom);
-    for (let j = 0; j < n; j++) {
-      const a = (edges[j] - xFrom) * scale;
-      const b = (edges[j + 1] - xFrom) * scale;
-      if (b <= 0 || a >= columns) continue;
-      const density = psi[2 * j] ** 2 + psi[2 * j + 1] ** 2;
-      const last = Math.min(columns - 1, Math.floor(b));
-      for (let c = Math.max(0, Math.floor(a)); c <= last; c++)
-        sums[at * columns + c] += density * Math.max(0, Math.min(b, c + 1) - Math.max(a, c));
+    const { x, sums } = this;
+    const width = (xTo - xFrom) / columns;
+    const base = at * columns;
+    let c = 0;
+    let right = psi[0] ** 2 + psi[1] ** 2;
+    for (let j = 0; j < x.length - 1; j++) {
+      const left = right;
+      right = psi[2 * j + 2] ** 2 + psi[2 * j + 3] ** 2;
+      if (x[j + 1] <= xFrom) continue;
+      if (x[j] >= xTo) break;
+      const slope = (right - left) / (x[j + 1] - x[j]);
+      const end = Math.min(x[j + 1], xTo);
+      // The stretch between two nodes, cut at the edges of the columns; a linear density is its middle value on average.
+      for (let a = Math.max(x[j], xFrom); a < end; ) {
+        while (c < columns - 1 && xFrom + (c + 1) * width <= a) c++;
+        const b = c < columns - 1 ? Math.min(end, xFrom + (c + 1) * width) : end;
+        sums[base + c] += ((b - a) / width) * (left + slope * (0.5 * (a + b) - x[j]));
+        a = b;
+      }
     }
   }
 
@@ -77,14 +85,4 @@ export class DensityRecorder implements Recorder {
     }
     return { columns, rows, xFrom, xTo, tFrom, tTo, density };
   }
-}
-
-/** Edges of the cells: half-way between the nodes. */
-function cellEdges({ x, spacing }: Grid): Float64Array {
-  const n = x.length;
-  const edges = new Float64Array(n + 1);
-  edges[0] = x[0] - spacing[0] / 2;
-  for (let j = 1; j < n; j++) edges[j] = x[j] - spacing[j - 1] / 2;
-  edges[n] = x[n - 1] + spacing[n - 2] / 2;
-  return edges;
 }

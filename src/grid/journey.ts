@@ -139,10 +139,10 @@ function front(from: Departure, level: number, end: number, clock: Clock, backwa
 }
 
 /** Time (fs) in which all promptly moving groups have covered `length` nm on the near side's level. */
-export function passage(from: Departure, length: number, clock: Clock): number {
+export function passage(from: Departure, length: number, clock: Clock, spreads = PROMPT_SPREADS): number {
   const { k0, spread, mass, near, energy } = from;
-  const slowest = Math.max(k0 - PROMPT_SPREADS * spread, k0 / 4);
-  const fastest = k0 + PROMPT_SPREADS * spread;
+  const slowest = Math.max(k0 - spreads * spread, k0 / 4);
+  const fastest = k0 + spreads * spread;
   let time = 0;
   for (const k of [slowest, k0, fastest]) {
     const speed = ((HBAR * k) / mass) * slowing(clock, near + kineticEnergy(k, mass), energy);

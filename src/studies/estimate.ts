@@ -1,17 +1,14 @@
 import type { Bounded } from "../analysis/results.js";
 import { departure } from "../grid/journey.js";
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
-import { crankNicolson } from "../steppers/crank-nicolson.js";
 import { stepperNamed } from "../steppers/registry.js";
 import { splitOperator } from "../steppers/split-operator.js";
 import { atMost, type Calculation, type Check, type StudyOptions } from "./calculation.js";
+import { chooseStepper } from "./choose-stepper.js";
 import { crankNicolsonTransmission } from "./crank-nicolson-transmission.js";
 import { isForced } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
 import { splitOperatorTransmission } from "./split-operator-transmission.js";
-
-/** Asked for more than this (relative), a smooth structure goes to the split operator, which converges faster there. */
-const SPECTRAL_ACCURACY = 1e-9;
 
 /** The answer to a design: probabilities with bounds, and what the verdict rests on. */
 export interface Estimate extends Calculation {
@@ -24,13 +21,6 @@ export interface Estimate extends Calculation {
   readonly verdict: "trusted" | "doubtful";
   /** What a reader should know, in sentences. */
   readonly notes: readonly string[];
-}
-
-/** The stepper that a design gets: the one it names, or the cheapest that reaches the accuracy. */
-export function chooseStepper(design: Design, accuracy: number): string {
-  const { stepper } = design.numerics;
-  const smooth = design.potential.slopeTransform === undefined && design.potential.uniformMass;
-  return stepper ?? (smooth && accuracy < SPECTRAL_ACCURACY ? splitOperator.name : crankNicolson.name);
 }
 
 /**
