@@ -18,7 +18,7 @@ import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { type Outcome, runToEnd } from "./outcome.js";
 
 /** Cells of the successive calculations in units of the unrefined grid's. Tuned for least work to 1e-6 on check-values 3.6. */
-const REFINEMENTS = [2, 3, 4, 6, 8, 12, 16, 24, 32];
+export const REFINEMENTS = [2, 3, 4, 6, 8, 12, 16, 24, 32];
 /** Share of the error asked for that what remains may take. */
 const REMAINING_SHARE = 0.1;
 /** The end is moved out by this factor while too much remains. */
