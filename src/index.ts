@@ -13,7 +13,7 @@
 
 export type { MapWindow } from "./analysis/density-recorder.js";
 export { DensityRecorder } from "./analysis/density-recorder.js";
-// Single calculations: a stepper made ready, the only time loop, and what looks on.
+// Single calculations: a run made ready, the only time loop, and what looks on.
 export type { Recorder } from "./analysis/recorder.js";
 export type { Bounded, DensityMap, Series, SeriesColumn } from "./analysis/results.js";
 export { type Observed, SeriesRecorder } from "./analysis/series-recorder.js";
@@ -51,7 +51,9 @@ export type { Stepper, StepperDefinition, System } from "./steppers/stepper.js";
 // Studies: from a design to an answer.
 export type { Calculation, Check, Progress, RunSummary, StudyOptions } from "./studies/calculation.js";
 export { type Estimate, estimate } from "./studies/estimate.js";
+export { type History, type HistoryOptions, history } from "./studies/history.js";
 export { DesignLimitError } from "./studies/limits.js";
+export { type PreparedRun, type PrepareOptions, prepare } from "./studies/prepare.js";
 
 // Quantities, and numbers with their bounds.
 export { concise } from "./units/concise.js";

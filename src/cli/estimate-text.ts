@@ -70,7 +70,7 @@ function verdictText({ verdict, checks, accuracy }: Estimate): string {
   const reasons = checks
     .filter(({ passed }) => !passed)
     .map(({ name, value, limit, explanation }) =>
-      wrap(`  ${name}: ${short(value)}, limit ${short(limit)}: ${explanation}`, COLUMNS, "    "),
+      wrap(`  ${name} is ${short(value)}, above its limit ${short(limit)}: ${explanation}`, COLUMNS, "    "),
     );
   return [`${bold("doubtful")}:`, ...reasons].join("\n");
 }

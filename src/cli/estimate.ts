@@ -3,15 +3,17 @@ import { addDesignFlags, type DesignFlags, openDesign, placingLimits } from "./d
 import { EXIT } from "./exit-codes.js";
 import { progressLine } from "./progress.js";
 import type { Session } from "./session.js";
-import { print, printJson } from "./terminal.js";
+import { print, printJson, say } from "./terminal.js";
 
 interface Flags extends DesignFlags {
+  readonly out?: string;
   readonly json?: true;
 }
 
 const EXAMPLES = `
 Examples:
   postern estimate blocking.yaml
+  postern estimate blocking.yaml --out results
   postern estimate blocking.yaml --set "potential.layers[0].width=3 nm" --accuracy 1e-9
   postern estimate blocking.yaml --json`;
 
@@ -24,6 +26,7 @@ export function estimateCommand(session: Session): Command {
         "and says whether the answer can be trusted. Ends with 0 when it can, with 3 when it is doubtful.",
     )
     .argument("<FILE>", "design file")
+    .option("--out <DIR>", "also write summary.json, series.csv and map.png into this folder")
     .option("--json", "print one JSON document instead of text");
   return addDesignFlags(command)
     .addHelpText("after", EXAMPLES)
@@ -32,11 +35,16 @@ export function estimateCommand(session: Session): Command {
 
 async function run(file: string, flags: Flags, session: Session): Promise<void> {
   const opened = await openDesign(file, flags);
+  if (flags.out !== undefined) (await import("../files/atomic.js")).checkFolder(flags.out);
   const { estimate } = await import("../studies/estimate.js");
   const progress = progressLine();
   try {
     const options = { signal: session.signal, onProgress: progress.onProgress };
     const answer = await placingLimits(opened, () => estimate(opened.design, options));
+    const written =
+      flags.out === undefined
+        ? []
+        : await (await import("./result-folder.js")).writeResults(flags.out, opened, answer, options);
     progress.stop();
     if (flags.json) {
       const { estimateDocument } = await import("./estimate-document.js");
@@ -45,6 +53,7 @@ async function run(file: string, flags: Flags, session: Session): Promise<void> 
       const { estimateText } = await import("./estimate-text.js");
       print(estimateText(answer));
     }
+    for (const path of written) say(path);
     session.exitCode = answer.verdict === "trusted" ? EXIT.done : EXIT.doubtful;
   } finally {
     progress.stop();

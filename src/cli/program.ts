@@ -1,6 +1,7 @@
 import { Command, type CommanderError } from "commander";
 import { estimateCommand } from "./estimate.js";
 import { EXIT } from "./exit-codes.js";
+import { mapCommand } from "./map.js";
 
 import { potentialsCommand } from "./potentials.js";
 import { errorReport } from "./report-error.js";
@@ -11,7 +12,7 @@ import { validateCommand } from "./validate.js";
 import { version } from "./version.js";
 
 /** Every command, in the order in which help lists them. A new command is one file and one line here. */
-const COMMANDS = [estimateCommand, validateCommand, potentialsCommand];
+const COMMANDS = [estimateCommand, mapCommand, validateCommand, potentialsCommand];
 
 /** Runs the program with its arguments; returns what it ends with. */
 export async function run(args: readonly string[]): Promise<number> {

@@ -13,3 +13,9 @@ export class Interrupted extends Error {
     this.name = "Interrupted";
   }
 }
+
+/** Throws the signal's reason if the user has stopped the program; lets a Ctrl-C of the last moments arrive first. */
+export async function stopIfInterrupted(signal: AbortSignal | undefined): Promise<void> {
+  await new Promise((next) => setImmediate(next));
+  signal?.throwIfAborted();
+}

@@ -8,3 +8,13 @@ export class UsageError extends Error {
     this.name = "UsageError";
   }
 }
+
+/** Does what refuses a value by a RangeError, and names the option that gave it. @throws UsageError instead */
+export function naming<T>(option: string, help: string, work: () => T): T {
+  try {
+    return work();
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    throw new UsageError(`${option}: ${error.message}`, help);
+  }
+}
