@@ -43,3 +43,27 @@ export function wavenumberDensity(
   }
   return (re * re + im * im) / (2 * Math.PI);
 }
+
+/**
+ * (2/pi) |sum_j w_j psi_j sin(k (x_j - wall))|^2 over nodes `from` ... `to` - 1: probability per wavenumber, nm, of what is on its
+ * way to, at or back from a closed end at `wall`. The sines are the waves of the stretch before that end, so the
+ * density does not change while a group is turned round. Cost O(n).
+ */
+export function wallDensity(
+  psi: Float64Array,
+  grid: Grid,
+  from: number,
+  to: number,
+  k: number,
+  wall: number,
+): number {
+  const { x, weight } = grid;
+  let re = 0;
+  let im = 0;
+  for (let j = from; j < to; j++) {
+    const wave = weight[j] * Math.sin(k * (x[j] - wall));
+    re += psi[2 * j] * wave;
+    im += psi[2 * j + 1] * wave;
+  }
+  return ((re * re + im * im) * 2) / Math.PI;
+}

@@ -1,4 +1,4 @@
-import { gridWave, wavenumberDensity } from "../analysis/energy-spectrum.js";
+import { gridWave, wallDensity, wavenumberDensity } from "../analysis/energy-spectrum.js";
 import { core, type Division, divide, norm, type Shares, shares } from "../analysis/probabilities.js";
 import type { Departure } from "../grid/journey.js";
 import { sampleGaussian, wavenumberWeight } from "../packets/gaussian.js";
@@ -90,6 +90,10 @@ function transmissionAt(
   if (!near || !far) return undefined;
   const came = wavenumberWeight(near.k, from.k0, from.packet.width) / near.slope;
   const [a, b] = from.direction > 0 ? [division.end, division.seam] : [0, division.first];
-  const got = wavenumberDensity(psi, grid, a, b, from.direction * far.k) / far.slope;
+  const wall = from.direction > 0 ? grid.x[grid.x.length - 1] + right : grid.x[0] - left;
+  const density = spectral
+    ? wavenumberDensity(psi, grid, a, b, from.direction * far.k)
+    : wallDensity(psi, grid, a, b, far.k, wall);
+  const got = density / far.slope;
   return came > 0 ? got / came : undefined;
 }
