@@ -11,7 +11,7 @@ export interface Stretch {
 }
 
 /** Phase per cell (largest local wavenumber times spacing) of the unrefined grid. Tuned against check-values 3.6. */
-export const BASE_PHASE = 0.8;
+export const BASE_PHASE = 1;
 
 /**
  * The unrefined stretches of an interface-aligned grid: one between each pair of neighbouring interfaces or faces and
