@@ -4,48 +4,29 @@ import { HBAR } from "../units/constants.js";
 import { checkPrepare, type Stepper, type StepperDefinition } from "./stepper.js";
 
 /**
- * Poles z of the diagonal Pade approximant of exp(z) of order 2M and its residues c, so that
- *   exp(z) ~ (-1)^M + sum_k c_k / (z - z_k) + O(z^(2M+1)).
- * Poles are minus the zeros of the numerator; the residues follow from them (see `residues`).
+ * Poles z of the diagonal Pade approximant of exp of order 2M, which is the product over them of
+ *   (z_k + x) / (z_k - x) = -1 + 2 z_k / (z_k - x).
  * Source: zeros computed for check-values (5.6); van Dijk and Toyama, Phys. Rev. E 75, 036707 (2007) for their use.
  */
-const POLES: Readonly<Record<number, readonly (readonly [number, number])[]>> = {
+const POLES: Readonly<Record<number, readonly Complex[]>> = {
   2: [[2, 0]],
   4: [
     [3, Math.sqrt(3)],
     [3, -Math.sqrt(3)],
   ],
   6: [
-    [4.6443707092521712, 0],
+    [4.644370709252171, 0],
     [3.6778146453739144, 3.5087619195674433],
     [3.6778146453739144, -3.5087619195674433],
   ],
 };
-
-/** c_k = (z_k - z)-free part: prod_l (-z_k - z_l) / prod_(l != k) (z_k - z_l) times (-1)^M. */
-function residues(poles: readonly (readonly [number, number])[]): [number, number][] {
-  return poles.map(([zRe, zIm], k) => {
-    let re = poles.length % 2 === 0 ? 1 : -1;
-    let im = 0;
-    poles.forEach(([pRe, pIm], l) => {
-      // numerator zero at -p: factor (z_k + p_l)
-      [re, im] = [re * (zRe + pRe) - im * (zIm + pIm), re * (zIm + pIm) + im * (zRe + pRe)];
-      if (l === k) return;
-      const dRe = zRe - pRe;
-      const dIm = zIm - pIm;
-      const square = dRe * dRe + dIm * dIm;
-      [re, im] = [(re * dRe + im * dIm) / square, (im * dRe - re * dIm) / square];
-    });
-    return [re, im];
-  });
-}
 
 /**
  * Crank-Nicolson (the Cayley form of the step) and its generalisations to order 4 and 6 in the time step:
  *
  *   psi(t + dt) = exp(-i E_ref dt / hbar) R(-i (H - E_ref) dt / hbar) psi(t),
  *
- * with R the diagonal Pade approximant of exp in partial fractions (one tridiagonal solution a pole), H the
+ * with R the diagonal Pade approximant of exp as a product (one tridiagonal solution a pole), H the
  * flux-conserving discrete Hamiltonian of grid/finite-volume.ts and E_ref the system's reference energy, at which the
  * step is exact. R(-i y) has modulus one for real y, so norm and <H> are kept to round-off, and since the step is a
  * function of H alone the asymptotic probabilities do not depend on dt at all. Closed ends. Cost O(n M) a step for order 2M.
@@ -75,27 +56,24 @@ export const crankNicolson: StepperDefinition = {
       below[j] = (-tau * coupling[j]) / weight[j];
       above[j] = (-tau * coupling[j + 1]) / weight[j];
     }
-    const poles = POLES[chosen];
-    const weights = residues(poles);
-    // Row of the pole z: (z + i tau (H - E_ref)) phi = psi; then psi' = phase ((-1)^M psi - sum_k c_k phi_k).
+    // Pole z: psi <- -psi + 2 z phi with (z + i tau (H - E_ref)) phi = psi; the last one brings the phase along.
     const reference = system.referenceEnergy ?? 0;
-    const factors = poles.map(
-      ([re, im]) =>
-        new TwoEndedFactors(
+    const poles = POLES[chosen].map(([re, im], k, all) => {
+      const modulus = Math.hypot(re, im);
+      return {
+        factors: new TwoEndedFactors(
           new Float64Array(n).fill(re),
           diagonal.map((d) => im + tau * (d - reference)),
           below,
           above,
+          2 * modulus,
         ),
-    );
-    const phase: Complex = [Math.cos(tau * reference), -Math.sin(tau * reference)];
-    const sign = poles.length % 2 === 0 ? 1 : -1;
-    const keepFirst: Complex = [sign * phase[0], sign * phase[1]];
-    const keepOthers: Complex = [1, 0];
-    const add = weights.map(
-      ([re, im]): Complex => [im * phase[1] - re * phase[0], -re * phase[1] - im * phase[0]],
-    );
-    const start = poles.length > 1 ? new Float64Array(2 * n) : undefined;
+        turn: im === 0 ? undefined : ([re / modulus, im / modulus] as Complex),
+        phase: (k < all.length - 1
+          ? [1, 0]
+          : [Math.cos(tau * reference), -Math.sin(tau * reference)]) as Complex,
+      };
+    });
     const stepper: Stepper = {
       definition: crankNicolson,
       system,
@@ -103,9 +81,7 @@ export const crankNicolson: StepperDefinition = {
       timeStep,
       potentialOnGrid: potential,
       advance(psi) {
-        if (start) start.set(psi);
-        for (let k = 0; k < factors.length; k++)
-          factors[k].solveInto(psi, start ?? psi, k === 0 ? keepFirst : keepOthers, add[k]);
+        for (const { factors, phase, turn } of poles) factors.step(psi, phase, turn);
       },
       applyHamiltonian(out, psi) {
         applyTridiagonal(out, psi, diagonal, coupling, weight);

@@ -43,7 +43,6 @@ export const splitOperator: StepperDefinition = {
     const drifts = tables(splitting.a, (a) => phases(kinetic, (a * timeStep) / HBAR, 1 / n));
     const fft = new ForwardFft(n);
     const spectrum = new Float64Array(2 * n);
-    const conjugate = new Float64Array(2 * n);
     const stepper: Stepper = {
       definition: splitOperator,
       system,
@@ -51,12 +50,12 @@ export const splitOperator: StepperDefinition = {
       timeStep,
       potentialOnGrid: v,
       advance(psi) {
-        multiply(psi, psi, kicks[0]);
+        multiply(psi, kicks[0]);
         for (let s = 0; s < drifts.length; s++) {
           fft.forward(spectrum, psi);
-          multiplyConjugated(spectrum, spectrum, drifts[s]);
-          fft.forward(conjugate, spectrum);
-          multiplyFromConjugate(psi, conjugate, kicks[s + 1]);
+          multiplyThenConjugate(spectrum, drifts[s]);
+          fft.forward(psi, spectrum);
+          conjugateThenMultiply(psi, kicks[s + 1]);
         }
       },
       applyHamiltonian(out, psi) {
@@ -100,32 +99,59 @@ function phases(energies: Float64Array, t: number, scale: number): Float64Array 
   return table;
 }
 
-/** out = z p */
-function multiply(out: Float64Array, z: Float64Array, p: Float64Array): void {
-  for (let i = 0; i < p.length; i += 2) {
-    const re = z[i];
-    const im = z[i + 1];
-    out[i] = re * p[i] - im * p[i + 1];
-    out[i + 1] = re * p[i + 1] + im * p[i];
+// Two points a turn, because the compiler looks up every array anew in each turn (measured: 7.4 us without, 5.7 us with,
+// 4096 points); a state has an even number of them, being a power of two.
+
+/** z <- z p */
+function multiply(z: Float64Array, p: Float64Array): void {
+  for (let i = 0; i < p.length; i = (i + 4) | 0) {
+    let re = z[i];
+    let im = z[(i + 1) | 0];
+    let c = p[i];
+    let s = p[(i + 1) | 0];
+    z[i] = re * c - im * s;
+    z[(i + 1) | 0] = re * s + im * c;
+    re = z[(i + 2) | 0];
+    im = z[(i + 3) | 0];
+    c = p[(i + 2) | 0];
+    s = p[(i + 3) | 0];
+    z[(i + 2) | 0] = re * c - im * s;
+    z[(i + 3) | 0] = re * s + im * c;
   }
 }
 
-/** out = conj(z p) */
-function multiplyConjugated(out: Float64Array, z: Float64Array, p: Float64Array): void {
-  for (let i = 0; i < p.length; i += 2) {
-    const re = z[i];
-    const im = z[i + 1];
-    out[i] = re * p[i] - im * p[i + 1];
-    out[i + 1] = -re * p[i + 1] - im * p[i];
+/** z <- conj(z p) */
+function multiplyThenConjugate(z: Float64Array, p: Float64Array): void {
+  for (let i = 0; i < p.length; i = (i + 4) | 0) {
+    let re = z[i];
+    let im = z[(i + 1) | 0];
+    let c = p[i];
+    let s = p[(i + 1) | 0];
+    z[i] = re * c - im * s;
+    z[(i + 1) | 0] = -re * s - im * c;
+    re = z[(i + 2) | 0];
+    im = z[(i + 3) | 0];
+    c = p[(i + 2) | 0];
+    s = p[(i + 3) | 0];
+    z[(i + 2) | 0] = re * c - im * s;
+    z[(i + 3) | 0] = -re * s - im * c;
   }
 }
 
-/** out = conj(z) p */
-function multiplyFromConjugate(out: Float64Array, z: Float64Array, p: Float64Array): void {
-  for (let i = 0; i < p.length; i += 2) {
-    const re = z[i];
-    const im = z[i + 1];
-    out[i] = re * p[i] + im * p[i + 1];
-    out[i + 1] = re * p[i + 1] - im * p[i];
+/** z <- conj(z) p */
+function conjugateThenMultiply(z: Float64Array, p: Float64Array): void {
+  for (let i = 0; i < p.length; i = (i + 4) | 0) {
+    let re = z[i];
+    let im = z[(i + 1) | 0];
+    let c = p[i];
+    let s = p[(i + 1) | 0];
+    z[i] = re * c + im * s;
+    z[(i + 1) | 0] = re * s - im * c;
+    re = z[(i + 2) | 0];
+    im = z[(i + 3) | 0];
+    c = p[(i + 2) | 0];
+    s = p[(i + 3) | 0];
+    z[(i + 2) | 0] = re * c + im * s;
+    z[(i + 3) | 0] = re * s - im * c;
   }
 }
