@@ -15,16 +15,19 @@ import { commonChecks, structureLength } from "./common-checks.js";
 import { forcedRoom } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
-import { type Outcome, runToEnd } from "./outcome.js";
+import { LAST_PART, type Outcome, runToEnd } from "./outcome.js";
 
 /** Cells of the successive calculations in units of the unrefined grid's. Tuned for least work to 1e-6 on check-values 3.6. */
-export const REFINEMENTS = [2, 3, 4, 6, 8, 12, 16, 24, 32];
-/** Refinement of the calculation that only tells whether the end is late enough. */
-const PILOT_REFINEMENT = 1;
-/** Share of the error asked for that what remains may take. */
-const REMAINING_SHARE = 0.1;
-/** The end is moved out by this factor while too much remains. */
-const PROLONGATION = 1.5;
+export const REFINEMENTS = [1, 2, 3, 4, 6, 8, 12, 16, 24, 32];
+/** Calculations before the bound is believed. */
+const FEWEST_CALCULATIONS = 4;
+/** Share of the error asked for that the spacing may take, ... */
+const SPACING_SHARE = 0.7;
+/** ... and that what remains may take. */
+const REMAINING_SHARE = 0.2;
+/** The end is moved out by a factor between these while too much remains. */
+const LEAST_PROLONGATION = 1.2;
+const MOST_PROLONGATION = 2.5;
 /** Work (nodes times steps) after which the end is no longer moved out and the grid no longer refined. */
 const WORK_LIMIT = 2e9;
 /** Nodes beyond which a design is refused. */
@@ -87,10 +90,10 @@ export async function crankNicolsonTransmission(
   let plan = planClosed(design);
   for (;;) {
     // The unrefined grid tells, at a fraction of the cost, whether the end is late enough.
-    const pilot = plan.forced ? undefined : await outcomeOn(plan, design, PILOT_REFINEMENT, options);
-    let next = pilot && prolonged(design, plan, pilot, accuracy);
+    const pilot = await outcomeOn(plan, design, REFINEMENTS[0], options);
+    let next = prolonged(design, plan, pilot, accuracy);
     if (next === undefined) {
-      const attempt = await attemptAt(plan, design, accuracy, options);
+      const attempt = await attemptAt(plan, design, pilot, accuracy, options);
       next = prolonged(design, plan, attempt.outcomes[attempt.outcomes.length - 1].outcome, accuracy);
       if (next === undefined) return summary(design, plan, attempt, accuracy);
     }
@@ -133,6 +136,7 @@ interface Attempt {
 async function attemptAt(
   plan: ClosedPlan,
   design: Design,
+  pilot: Outcome,
   accuracy: number,
   options: StudyOptions,
 ): Promise<Attempt> {
@@ -142,13 +146,14 @@ async function attemptAt(
   const outcomes: { refinement: number; outcome: Outcome }[] = [];
   for (const refinement of plan.forced ? [1] : REFINEMENTS) {
     if (outcomes.length > 0 && alignedPoints(plan.stretches, refinement) * plan.steps > WORK_LIMIT) break;
-    const outcome = await outcomeOn(plan, design, refinement, options);
+    const outcome =
+      refinement === REFINEMENTS[0] ? pilot : await outcomeOn(plan, design, refinement, options);
     outcomes.push({ refinement, outcome });
     const t = transmission.add(1 / refinement, outcome.transmitted);
     reflection.add(1 / refinement, outcome.reflected);
     atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
     if (tooMuchRemains(outcome, accuracy)) break;
-    if (t.error <= 0.5 * accuracy * t.value && outcomes.length > 2) break;
+    if (t.error <= SPACING_SHARE * accuracy * t.value && outcomes.length >= FEWEST_CALCULATIONS) break;
   }
   return { outcomes, transmission, reflection, atMean };
 }
@@ -165,10 +170,18 @@ function prolonged(
   accuracy: number,
 ): ClosedPlan | undefined {
   if (design.numerics.end !== undefined || !tooMuchRemains(outcome, accuracy)) return undefined;
-  const next = planClosed(design, plan.end * PROLONGATION);
+  const next = planClosed(design, plan.end * prolongation(outcome, accuracy));
   return alignedPoints(next.stretches, plan.forced ? 1 : REFINEMENTS[0]) * next.steps > WORK_LIMIT / 4
     ? undefined
     : next;
+}
+
+/** Factor on the end that should do if what is inside goes on decaying as it did over the last tenth of the time. */
+function prolongation(outcome: Outcome, accuracy: number): number {
+  const rate = Math.log(outcome.insideBefore / outcome.inside) / LAST_PART;
+  const excess = outcome.unfinished / (REMAINING_SHARE * accuracy * outcome.transmitted);
+  const factor = 1.1 + Math.log(excess) / rate;
+  return rate > 0 ? Math.min(MOST_PROLONGATION, Math.max(LEAST_PROLONGATION, factor)) : MOST_PROLONGATION;
 }
 
 function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: number): Calculation {

@@ -89,7 +89,7 @@ function packetChoices({ packet }: Design, from: Departure): Choice[] {
 function closedChoices(design: Design): Choice[] {
   const plan = planClosed(design);
   const { numerics } = design;
-  const [a, b] = plan.forced ? [1, 1] : [REFINEMENTS[0], REFINEMENTS[3]];
+  const [a, b] = plan.forced ? [1, 1] : [REFINEMENTS[0], REFINEMENTS[4]];
   const widest = plan.stretches.reduce((h, s) => Math.max(h, (s.to - s.from) / s.cells), 0);
   const finest = plan.stretches.reduce(
     (h, s) => Math.min(h, (s.to - s.from) / s.cells),

@@ -11,6 +11,8 @@ export interface Outcome {
   readonly transmitted: number;
   readonly reflected: number;
   readonly inside: number;
+  /** `inside` when nine tenths of the time were over. */
+  readonly insideBefore: number;
   /** Bound on what is still to be added to `transmitted`: inside, and on its way. */
   readonly unfinished: number;
   /** Change of the norm over the whole calculation. */
@@ -26,7 +28,7 @@ export interface Outcome {
  * 1/t^(n+1), n >= 1, leaves at most 9 times as much (0.9^-n - 1 >= n/9); n = 3 is the rule for slow components behind a barrier,
  * and an exponential leaves less.
  */
-const LAST_PART = 0.1;
+export const LAST_PART = 0.1;
 const TAIL_FACTOR = (1 - LAST_PART) / LAST_PART;
 
 /** Runs a stepper from the packet's start for `steps` steps and measures what got through. */
@@ -44,12 +46,15 @@ export async function runToEnd(
   const division = divide(grid, core(potential), seam);
   const through = (s: Shares) => (from.direction > 0 ? s.right : s.left);
   let earlier = 0;
+  let insideBefore = 0;
   const mark = Math.max(1, Math.floor(steps * (1 - LAST_PART)));
   const watch = {
     every: mark,
     record(time: number, state: Float64Array) {
-      if (Math.abs(time - mark * stepper.timeStep) < 0.5 * Math.abs(stepper.timeStep))
-        earlier = through(shares(state, grid, division));
+      if (Math.abs(time - mark * stepper.timeStep) > 0.5 * Math.abs(stepper.timeStep)) return;
+      const parts = shares(state, grid, division);
+      earlier = through(parts);
+      insideBefore = parts.inside;
     },
   };
   await propagate({ stepper, psi, steps }, [watch], {
@@ -63,6 +68,7 @@ export async function runToEnd(
     transmitted: transmitted / total,
     reflected: (from.direction > 0 ? parts.left : parts.right) / total,
     inside: parts.inside / total,
+    insideBefore: insideBefore / total,
     unfinished: (parts.inside + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
     drift: Math.abs(total - start) / start,
     sampling: Math.abs(start - 1),
