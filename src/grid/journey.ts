@@ -75,11 +75,43 @@ export function departure(design: Design, clearance = CLEARANCE_WIDTHS): Departu
  * frequency is (2/dt) arctan((E - E_ref) dt / 2 hbar): a group at energy E then travels at
  * v(E) / (1 + ((E - E_ref)/E_c)^2) with E_c = 2 hbar / dt, so that no group outruns a fixed speed.
  */
-export type Clock = { readonly kind: "exact" } | { readonly kind: "cayley"; readonly cutoff: number };
+export type Clock = ExactClock | CayleyClock;
+export interface ExactClock {
+  readonly kind: "exact";
+}
+export interface CayleyClock {
+  readonly kind: "cayley";
+  /** E_ref, eV, total energy. */
+  readonly reference: number;
+  /** E_c, eV. */
+  readonly cutoff: number;
+}
 
 /** Factor by which the clock slows a group of total energy E down. */
-export function slowing(clock: Clock, energy: number, reference: number): number {
-  return clock.kind === "exact" ? 1 : 1 / (1 + ((energy - reference) / clock.cutoff) ** 2);
+export function slowing(clock: Clock, energy: number): number {
+  return clock.kind === "exact" ? 1 : 1 / (1 + ((energy - clock.reference) / clock.cutoff) ** 2);
+}
+
+/** Slowest prompt wavenumber, relative to the fastest, below which a packet counts as one with a slow tail. */
+const SLOW_EDGE = 0.1;
+/** How much narrower the fast passage is made then, see `cayleyClock`. */
+const TAIL_NARROWING = 7;
+
+/**
+ * The clock that lets a packet pass with least work, since the transmission does not depend on it. A packet whose
+ * groups are all prompt: E_ref its mean energy, E_c the distance to its fast edge, so that every group keeps half its speed or better.
+ * A packet with a slow tail (its slow edge, or a level on the far side, lies among its energies): E_ref is where groups
+ * are slow and E_c a seventh of the rest, so that the fast groups, which would need a long box, are slowed to the
+ * pace of the slow ones, which decide the end anyway.
+ */
+export function cayleyClock(from: Departure): CayleyClock {
+  const slowEdge = from.k0 - PROMPT_SPREADS * from.spread;
+  const fastEdge = from.k0 + PROMPT_SPREADS * from.spread;
+  const threshold =
+    from.far > from.lowest ? from.far : slowEdge < SLOW_EDGE * fastEdge ? from.near : undefined;
+  if (threshold === undefined || threshold >= from.energy)
+    return { kind: "cayley", reference: from.energy, cutoff: from.highest - from.energy };
+  return { kind: "cayley", reference: threshold, cutoff: (from.highest - threshold) / TAIL_NARROWING };
 }
 
 /** Room needed left and right of the structure, nm. */
@@ -111,13 +143,13 @@ export function roomFor(from: Departure, end: number, clock: Clock, rule: "close
 
 /** How far (nm) the fastest followed group gets in `end` fs at level `level`, with the width of its front. */
 function front(from: Departure, level: number, end: number, clock: Clock, backward = false): number {
-  const { k0, spread, mass, near, energy } = from;
+  const { k0, spread, mass, near } = from;
   const top = backward ? FOLLOWED_SPREADS * spread - k0 : k0 + FOLLOWED_SPREADS * spread;
   if (top <= 0) return 0;
   const speedAt = (k: number): number => {
     const total = near + kineticEnergy(k, mass);
     if (total <= level) return 0;
-    return (HBAR * wavenumberOf(total - level, mass) * slowing(clock, total, energy)) / mass;
+    return (HBAR * wavenumberOf(total - level, mass) * slowing(clock, total)) / mass;
   };
   const samples = 600;
   const dk = top / samples;
@@ -140,12 +172,12 @@ function front(from: Departure, level: number, end: number, clock: Clock, backwa
 
 /** Time (fs) in which all promptly moving groups have covered `length` nm on the near side's level. */
 export function passage(from: Departure, length: number, clock: Clock, spreads = PROMPT_SPREADS): number {
-  const { k0, spread, mass, near, energy } = from;
+  const { k0, spread, mass, near } = from;
   const slowest = Math.max(k0 - spreads * spread, k0 / 4);
   const fastest = k0 + spreads * spread;
   let time = 0;
   for (const k of [slowest, k0, fastest]) {
-    const speed = ((HBAR * k) / mass) * slowing(clock, near + kineticEnergy(k, mass), energy);
+    const speed = ((HBAR * k) / mass) * slowing(clock, near + kineticEnergy(k, mass));
     time = Math.max(time, length / speed);
   }
   return time;

@@ -5,7 +5,15 @@ import {
   forcedStretches,
   type Stretch,
 } from "../grid/aligned.js";
-import { type Clock, type Departure, departure, passage, type Room, roomFor } from "../grid/journey.js";
+import {
+  type CayleyClock,
+  cayleyClock,
+  type Departure,
+  departure,
+  passage,
+  type Room,
+  roomFor,
+} from "../grid/journey.js";
 import { Extrapolation } from "../numerics/extrapolation.js";
 import type { Design } from "../problem/design.js";
 import { crankNicolson } from "../steppers/crank-nicolson.js";
@@ -36,7 +44,7 @@ const POINTS_LIMIT = 2 ** 23;
 /** All that is fixed before the first step. */
 export interface ClosedPlan {
   readonly from: Departure;
-  readonly clock: Extract<Clock, { kind: "cayley" }>;
+  readonly clock: CayleyClock;
   readonly timeStep: number;
   readonly order: number;
   readonly end: number;
@@ -48,24 +56,26 @@ export interface ClosedPlan {
 }
 
 /**
- * Plans the Crank-Nicolson calculation that ends at `end` (fs; automatic when undefined). The time step is as large as
- * lets all promptly moving groups pass at half their speed or better: E_c = 2 hbar / dt is the distance from the mean energy to the
- * edge of the packet. The transmission does not depend on it; the room needed and the number of steps do.
+ * Plans the Crank-Nicolson calculation that ends at `end` (fs; automatic when undefined). The time step is that of the clock with
+ * least work (see `cayleyClock`): the transmission does not depend on it; the room needed and the number of steps do.
  */
 export function planClosed(design: Design, end?: number): ClosedPlan {
   const { numerics, potential } = design;
   const from = departure(design);
-  const cutoff = numerics.timeStep ? (2 * HBAR) / numerics.timeStep : from.highest - from.energy;
-  const clock = { kind: "cayley", cutoff } as const;
-  const timeStep = (2 * HBAR) / cutoff;
+  const automatic = cayleyClock(from);
+  const clock: CayleyClock =
+    numerics.timeStep === undefined
+      ? automatic
+      : { kind: "cayley", reference: from.energy, cutoff: (2 * HBAR) / numerics.timeStep };
+  const timeStep = (2 * HBAR) / clock.cutoff;
   const reach = from.distance + structureLength(potential) + 6 * design.packet.width;
   const wanted = numerics.end ?? end ?? passage(from, reach, clock);
   const steps = Math.max(10, Math.ceil(wanted / timeStep));
   const actual = steps * timeStep;
   const room = forcedRoom(design, from, roomFor(from, actual, clock, "closed"));
-  const automatic = alignedStretches(potential, from, room);
+  const unforced = alignedStretches(potential, from, room);
   const step = forcedStep(design, room);
-  const stretches = step === undefined ? automatic : forcedStretches(automatic, step);
+  const stretches = step === undefined ? unforced : forcedStretches(unforced, step);
   const order = numerics.order ?? crankNicolson.defaultOrder;
   return { from, clock, timeStep, order, end: actual, steps, room, stretches, forced: step !== undefined };
 }
@@ -119,7 +129,7 @@ async function outcomeOn(
     grid: alignedGrid(plan.stretches, refinement),
     potential: design.potential,
     particleMass: design.particleMass,
-    referenceEnergy: plan.from.energy,
+    referenceEnergy: plan.clock.reference,
   };
   const stepper = crankNicolson.prepare(system, plan.timeStep, plan.order);
   return runToEnd(stepper, plan.from, plan.steps, undefined, options);

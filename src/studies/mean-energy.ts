@@ -8,7 +8,7 @@ import type { Outcome } from "./outcome.js";
 const SAMPLES = 60;
 
 /**
- * T at the mean energy with its bound: what the extrapolation left, and what the amplitude still inside the structure
+ * T at the mean energy with its bound: what the extrapolation left, and what the amplitude still inside the structure or near it
  * (probability P over a length L) can add to the projection on one plane wave, sqrt(P L) at most.
  */
 export function boundedAtMean(
@@ -19,7 +19,7 @@ export function boundedAtMean(
   length: number,
 ): Bounded {
   const density = wavenumberWeight(from.k0, from.k0, from.packet.width);
-  const missing = Math.sqrt((outcome.inside * Math.max(length, from.packet.width)) / (2 * Math.PI * density));
+  const missing = Math.sqrt((outcome.unfinished * Math.max(length, from.packet.width)) / (2 * Math.PI * density));
   const amplitude = Math.sqrt(Math.max(0, value));
   return { value, error: extrapolationError + missing * (2 * amplitude + missing) };
 }

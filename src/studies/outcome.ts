@@ -1,7 +1,8 @@
 import { gridWave, wallDensity, wavenumberDensity } from "../analysis/energy-spectrum.js";
 import { core, type Division, divide, norm, type Shares, shares } from "../analysis/probabilities.js";
+import type { Grid } from "../grid/grid.js";
 import type { Departure } from "../grid/journey.js";
-import { sampleGaussian, wavenumberWeight } from "../packets/gaussian.js";
+import { type GaussianPacket, sampleGaussian, wavenumberWeight } from "../packets/gaussian.js";
 import { propagate } from "../propagate.js";
 import type { Stepper } from "../steppers/stepper.js";
 import type { StudyOptions } from "./calculation.js";
@@ -41,7 +42,8 @@ export async function runToEnd(
 ): Promise<Outcome> {
   const { grid, potential } = stepper.system;
   const psi = new Float64Array(2 * grid.x.length);
-  sampleGaussian(psi, grid.x, from.packet);
+  const packet = packetOnGrid(from, grid);
+  sampleGaussian(psi, grid.x, packet);
   const start = norm(psi, grid.weight);
   const division = divide(grid, core(potential), seam);
   const through = (s: Shares) => (from.direction > 0 ? s.right : s.left);
@@ -72,7 +74,24 @@ export async function runToEnd(
     unfinished: (parts.inside + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
     drift: Math.abs(total - start) / start,
     sampling: Math.abs(start - 1),
-    transmissionAt: (energy) => transmissionAt(energy, psi, stepper, from, division),
+    transmissionAt: (energy) => transmissionAt(energy, psi, stepper, from, packet, division),
+  };
+}
+
+/**
+ * The packet as a grid holds it best: with the wavenumber and width whose energy and spread of energy, by the grid's own dispersion
+ * relation, are those of the design. Both tend to the design's own as the spacing vanishes, with an error of second order.
+ */
+function packetOnGrid({ packet, direction, mass, energy, near }: Departure, grid: Grid): GaussianPacket {
+  if (grid.ends === "periodic") return packet;
+  const step = direction > 0 ? grid.spacing[0] : grid.spacing[grid.spacing.length - 1];
+  const wave = gridWave(energy - near, mass, step);
+  const free = gridWave(energy - near, mass, 0);
+  if (!wave || !free) return packet;
+  return {
+    center: packet.center,
+    wavenumber: direction * wave.k,
+    width: (packet.width * wave.slope) / free.slope,
   };
 }
 
@@ -85,6 +104,7 @@ function transmissionAt(
   psi: Float64Array,
   { system }: Stepper,
   from: Departure,
+  packet: GaussianPacket,
   division: Division,
 ): number | undefined {
   const { grid } = system;
@@ -94,7 +114,7 @@ function transmissionAt(
   const near = gridWave(energy - from.near, from.mass, nearStep);
   const far = gridWave(energy - from.far, from.mass, farStep);
   if (!near || !far) return undefined;
-  const came = wavenumberWeight(near.k, from.k0, from.packet.width) / near.slope;
+  const came = wavenumberWeight(near.k, Math.abs(packet.wavenumber), packet.width) / near.slope;
   const [a, b] = from.direction > 0 ? [division.end, division.seam] : [0, division.first];
   const wall = from.direction > 0 ? grid.x[grid.x.length - 1] + right : grid.x[0] - left;
   const density = spectral
