@@ -30,7 +30,7 @@ function probabilities({ transmission, reflection, backward }: Estimate): string
     rows.push(["  of which", `${short(backward)} moves away from the structure from the start`]);
   }
   const brackets = /\([^)]*\)/.exec(bounded(transmission))?.[0];
-  const meaning = `${brackets} bounds the error, in units of the last digits: the true value of the model lies within it`;
+  const meaning = `${brackets}: a bound on the error, in units of the last digits; the true value of the model lies within it`;
   return `${table(rows)}\n\n${wrap(meaning)}`;
 }
 
@@ -39,7 +39,7 @@ function energies({ transmission, atMeanEnergy, meanEnergy, carryingEnergy }: Es
   const rows = [
     ["transmission of the packet", bounded(transmission), "all its energies, each with its weight"],
     ["transmission at its mean energy", bounded(atMeanEnergy), `a plane wave of ${energy(meanEnergy, 4)}`],
-    ["energy that carried most through", energy(carryingEnergy, 3), "seldom the mean"],
+    ["energy that carried most through", energy(carryingEnergy, 3), "the peak of the energies of what got through"],
   ];
   return `a packet is not its mean energy\n${table(rows, "  ")}`;
 }

@@ -4,6 +4,7 @@ import { EXIT } from "./exit-codes.js";
 import { progressLine } from "./progress.js";
 import type { Session } from "./session.js";
 import { print, printJson, say } from "./terminal.js";
+import { UsageError } from "./usage-error.js";
 
 interface Flags extends DesignFlags {
   readonly out?: string;
@@ -34,6 +35,8 @@ export function estimateCommand(session: Session): Command {
 }
 
 async function run(file: string, flags: Flags, session: Session): Promise<void> {
+  if (flags.out === "")
+    throw new UsageError("--out: the name of a folder is needed", "Write --out results, for example.");
   const opened = await openDesign(file, flags);
   if (flags.out !== undefined) (await import("../files/atomic.js")).checkFolder(flags.out);
   const { estimate } = await import("../studies/estimate.js");

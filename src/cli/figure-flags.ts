@@ -10,8 +10,8 @@ export interface FigureFlags {
   readonly svg?: true;
 }
 
-/** A part of space and time, nm and fs. */
-interface Window {
+/** A part of space and time, nm and fs; what is absent is chosen. */
+export interface FigureWindow {
   xFrom?: number;
   xTo?: number;
   tFrom?: number;
@@ -67,8 +67,8 @@ export const WINDOW_HELP =
   'A length is a place, a time a time: --from "-50 nm" --to "80 nm" --from "100 fs".';
 
 /** The part of space and time to show, as far as it is asked for. */
-export async function figureWindow({ from = [], to = [] }: FigureFlags): Promise<Window> {
-  const window: Window = {};
+export async function figureWindow({ from = [], to = [] }: FigureFlags): Promise<FigureWindow> {
+  const window: FigureWindow = {};
   if (from.length + to.length === 0) return window;
   const { placeOrTime } = await import("./place-or-time.js");
   for (const [option, texts, side] of [

@@ -7,6 +7,7 @@ import { addDesignFlags, collect, type DesignFlags, openDesign, placingLimits } 
 import {
   type FigureFlags,
   type FigureKind,
+  type FigureWindow,
   figureKind,
   figureSizeOf,
   figureWindow,
@@ -23,7 +24,7 @@ interface Flags extends DesignFlags, FigureFlags {
 }
 
 const EXAMPLES = `
-Without --from and --to the map shows the whole run.
+Without --from and --to the map shows the encounter of the packet with the structure.
 
 Examples:
   postern map blocking.yaml --out map.png
@@ -65,7 +66,9 @@ async function run(file: string, flags: Flags, session: Session): Promise<void> 
   const progress = progressLine();
   try {
     const options = { window, signal: session.signal, onProgress: progress.onProgress };
-    const seen = await placingLimits(opened, () => history(opened.design, options)).catch(windowFault);
+    const seen = await placingLimits(opened, () => history(opened.design, options)).catch((error) =>
+      windowFault(window, error),
+    );
     const figure = draw.drawMap(opened.design, seen, { ...size, scale: flags.scale });
     const content = await rendered(figure, kind, draw.figureTexts(opened.design));
     await stopIfInterrupted(session.signal);
@@ -78,10 +81,16 @@ async function run(file: string, flags: Flags, session: Session): Promise<void> 
   }
 }
 
-/** A window that turns out to be empty is wrong use; a design that cannot be followed has become a DesignError before. */
-function windowFault(error: unknown): never {
-  if (error instanceof RangeError) throw new UsageError(`--from, --to: ${error.message}`, WINDOW_HELP);
-  throw error;
+/** Where one end was given and the other one is chosen, nothing may be left between them. */
+function windowFault(window: FigureWindow, error: unknown): never {
+  const { xFrom, xTo, tFrom, tTo } = window;
+  const oneSided =
+    (xFrom === undefined) !== (xTo === undefined) || (tFrom === undefined) !== (tTo === undefined);
+  if (!(oneSided && error instanceof RangeError)) throw error;
+  throw new UsageError(
+    "--from, --to: nothing is left to show: an end left out is chosen near the structure and the encounter; give both ends",
+    WINDOW_HELP,
+  );
 }
 
 /** Asks before the calculation whether the file can be written. @throws OutputError */

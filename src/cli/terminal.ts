@@ -56,7 +56,7 @@ export function wrap(text: string, columns = COLUMNS, indent = ""): string {
 }
 
 /** Rows of cells as aligned lines, two spaces between columns; the last column is wrapped below itself. */
-export function table(rows: readonly (readonly string[])[], indent = ""): string {
+export function table(rows: readonly (readonly string[])[], indent = "", most = COLUMNS): string {
   const length = (text: string) => [...text].length;
   const columns = Math.max(...rows.map((row) => row.length));
   const widths = Array.from({ length: columns - 1 }, (_, i) =>
@@ -68,7 +68,7 @@ export function table(rows: readonly (readonly string[])[], indent = ""): string
       .map((cell, i) => `${cell}${" ".repeat(widths[i] - length(cell))}  `)
       .join("");
     const before = indent + head;
-    return wrap(before + (row.at(-1) ?? ""), COLUMNS, " ".repeat(length(before))).trimEnd();
+    return wrap(before + (row.at(-1) ?? ""), most, " ".repeat(length(before))).trimEnd();
   });
   return lines.join("\n");
 }

@@ -1,5 +1,5 @@
 import { Command } from "commander";
-import { addDesignFlags, type DesignFlags, openDesign } from "./design-flags.js";
+import { addDesignFlags, type DesignFlags, openDesign, placingLimits } from "./design-flags.js";
 import type { Session } from "./session.js";
 import { print, printJson } from "./terminal.js";
 
@@ -17,9 +17,10 @@ Examples:
 /** postern validate FILE */
 export function validateCommand(_session: Session): Command {
   const command = new Command("validate")
-    .summary("reads a design and prints it in full, with what is chosen automatically")
+    .summary("the design in full, with what is chosen automatically")
     .description(
-      "Reads a design, prints it in full with its defaults and automatic numerics, and computes nothing.",
+      "Reads a design and prints it in full: defaults filled in, every numeric choice with its reason, and warnings.\n" +
+        "Computes nothing.",
     )
     .argument("<FILE>", "design file")
     .option("--json", "print one JSON document instead of text");
@@ -28,8 +29,14 @@ export function validateCommand(_session: Session): Command {
 
 async function run(file: string, flags: Flags): Promise<void> {
   const opened = await openDesign(file, flags);
-  const { describeDesign } = await import("../design/describe.js");
-  const { design, yaml, sha256 } = describeDesign(opened.source.text, opened.source.options);
-  if (flags.json) printJson({ design: { title: opened.design.title, sha256, full: design } });
-  else print(`${yaml}\n# A right design. sha256 of its canonical form:\n# ${sha256}\n`);
+  const [{ describeDesign }, { explainPlan }] = await Promise.all([
+    import("../design/describe.js"),
+    import("../studies/explain.js"),
+  ]);
+  const described = describeDesign(opened.source.text, opened.source.options);
+  const plan = await placingLimits(opened, () => explainPlan(opened.design));
+  if (flags.json) {
+    const { design, sha256 } = described;
+    printJson({ design: { title: opened.design.title, sha256, full: design }, ...plan });
+  } else print((await import("./validate-text.js")).validateText(described, plan));
 }

@@ -95,7 +95,7 @@ interface Staging {
 function openStaging(dir: string): Staging {
   if (statSync(dir, { throwIfNoEntry: false })?.isDirectory() === false)
     throw new OutputError(dir, "this is a file, and a folder is needed; choose another name or remove it");
-  const created = mkdirSync(dir, { recursive: true });
+  const created = createFolders(dir);
   try {
     // On the file system of the folder itself: only there is renaming one indivisible step.
     const path = mkdtempSync(join(resolve(dir), ".postern-"));
@@ -107,6 +107,36 @@ function openStaging(dir: string): Staging {
   } catch (error) {
     removeEmpty(dir, created);
     throw error;
+  }
+}
+
+/**
+ * Creates a folder and those above it that are missing, one by one: the recursive way of Node never comes back where the
+ * system answers that there is no such place although the folder above exists, as in /proc.
+ * @returns the outermost folder that was created
+ */
+function createFolders(dir: string): string | undefined {
+  const missing: string[] = [];
+  for (let folder = resolve(dir); !statSync(folder, { throwIfNoEntry: false }); folder = dirname(folder))
+    missing.unshift(folder);
+  for (const folder of missing) {
+    try {
+      createFolder(folder);
+    } catch (error) {
+      removeEmpty(dirname(folder), missing[0]);
+      throw error;
+    }
+  }
+  return missing[0];
+}
+
+/** Somebody else may create the same folder at the same time. */
+function createFolder(folder: string): void {
+  try {
+    mkdirSync(folder);
+  } catch (error) {
+    const there = statSync(folder, { throwIfNoEntry: false });
+    if ((error as NodeJS.ErrnoException).code !== "EEXIST" || !there?.isDirectory()) throw error;
   }
 }
 
