@@ -79,10 +79,11 @@ export class TwoEndedFactors {
         inverse = reciprocal(diagRe[j] + product * inverse[0], diagIm[j] + product * inverse[1], j);
         this.store(Math.abs(m - j) - 1, step, inverse, e, toMiddle[j]);
       }
-      const product = toEnd[m] * toMiddle[m - step];
+      // Three or four rows leave none for the right side.
+      const product = first === m ? 0 : toEnd[m] * toMiddle[m - step];
       re += product * inverse[0];
       im += product * inverse[1];
-      towards.push(toEnd[m] / factor);
+      towards.push(first === m ? 0 : toEnd[m] / factor);
     }
     const [qRe, qIm] = reciprocal(re, im, m);
     this.middle = Float64Array.of(factor * qRe, factor * qIm, ...towards);
@@ -91,15 +92,18 @@ export class TwoEndedFactors {
   /** Puts the coefficients of a row, `distance` rows from the middle's neighbour, where the sweeps read them. */
   private store(distance: number, step: 1 | -1, [re, im]: Complex, toEnd: number, toMiddle: number): void {
     const { inward, outward, head, factor, pairs } = this;
-    const q = [factor * re, factor * im, toEnd / factor];
-    const u = [-toMiddle * im, toMiddle * re];
-    if (distance >= pairs) {
-      head.set([...q, ...u], head.length - HEAD * (distance - pairs + 1));
-      return;
-    }
-    const right = step === 1 ? 0 : 1;
-    inward.set(q, INWARD * (pairs - 1 - distance) + 3 * right);
-    outward.set(u, OUTWARD * distance + 4 * right);
+    const lone = distance >= pairs;
+    const side = step === 1 ? 0 : 1;
+    const at = head.length - HEAD * (distance - pairs + 1);
+    const q = lone ? at : INWARD * (pairs - 1 - distance) + 3 * side;
+    const u = lone ? at + 3 : OUTWARD * distance + 4 * side;
+    const first = lone ? head : inward;
+    const second = lone ? head : outward;
+    first[q] = factor * re;
+    first[q + 1] = factor * im;
+    first[q + 2] = toEnd / factor;
+    second[u] = -toMiddle * im;
+    second[u + 1] = toMiddle * re;
   }
 
   /**
