@@ -8,8 +8,8 @@ import {
 import type { Design } from "../problem/design.js";
 import { HBAR } from "../units/constants.js";
 
-/** Distance of the packet's centre from the structure, in its own widths: |psi| at the face is exp(-36) of its peak. */
-export const CLEARANCE_WIDTHS = 12;
+/** Distance of the packet's centre from the structure, in its own widths: |psi| at the face is exp(-42) of its peak. */
+export const CLEARANCE_WIDTHS = 13;
 /** Spreads of k to either side that a box must have room for; the weight beyond is 3e-14. */
 const FOLLOWED_SPREADS = 7.5;
 /** Spreads of k to either side that must travel at a good speed; the weight beyond is 1e-9 and arrives later. */

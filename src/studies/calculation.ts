@@ -31,6 +31,8 @@ export interface Calculation {
     readonly spacing: number;
     readonly timeStep: number;
     readonly remaining: number;
+    /** From the part of the packet that lies beyond the near face from the start. */
+    readonly start: number;
     readonly roundOff: number;
   };
   /** Whole calculations that the answer was put together from. */

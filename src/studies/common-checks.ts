@@ -1,4 +1,5 @@
 import type { Departure } from "../grid/journey.js";
+import { normalTail } from "../numerics/erfc.js";
 import type { Potential } from "../potentials/potential.js";
 import type { Design } from "../problem/design.js";
 import { atMost, type Check } from "./calculation.js";
@@ -10,6 +11,21 @@ const CLEAR_AMPLITUDE = 1e-9;
 const NORM_LIMIT = 1e-9;
 /** Largest error of the sampled packet's norm. */
 const SAMPLING_LIMIT = 1e-9;
+
+/** error / value as a check shows it: huge where there is no positive value to relate it to. */
+export function relativeError(error: number, value: number): number {
+  const relative = error / value;
+  return value > 0 && Number.isFinite(relative) ? relative : Number.MAX_VALUE;
+}
+
+/**
+ * What the part of the packet that lies beyond the near face from the start (probability P) may add to or take from the
+ * transmission T: P + 2 sqrt(T P), as amplitudes add.
+ */
+export function startError(from: Departure, transmitted: number): number {
+  const beyond = normalTail(from.distance / from.packet.width);
+  return beyond + 2 * Math.sqrt(Math.max(0, transmitted) * beyond);
+}
 
 /** Distance between the faces, nm. */
 export function structureLength(potential: Potential): number {
@@ -37,7 +53,7 @@ export function commonChecks(
     atMost("norm", drift, NORM_LIMIT, "change of the norm over the whole calculation"),
     atMost(
       "remaining",
-      outcome.unfinished / transmitted,
+      relativeError(outcome.unfinished, transmitted),
       accuracy,
       "what is still inside or still to arrive at the end, relative to what got through",
     ),

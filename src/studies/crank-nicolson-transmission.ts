@@ -19,7 +19,7 @@ import type { Design } from "../problem/design.js";
 import { crankNicolson } from "../steppers/crank-nicolson.js";
 import { HBAR } from "../units/constants.js";
 import { atMost, type Calculation, type RunSummary, type StudyOptions } from "./calculation.js";
-import { commonChecks, structureLength } from "./common-checks.js";
+import { commonChecks, relativeError, startError, structureLength } from "./common-checks.js";
 import { forcedRoom } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
@@ -37,9 +37,9 @@ const REMAINING_SHARE = 0.2;
 const LEAST_PROLONGATION = 1.2;
 const MOST_PROLONGATION = 2.5;
 /** Work (nodes times steps) after which the end is no longer moved out and the grid no longer refined. */
-const WORK_LIMIT = 2e9;
+const WORK_LIMIT = 1e9;
 /** Nodes beyond which a design is refused. */
-const POINTS_LIMIT = 2 ** 23;
+const POINTS_LIMIT = 2 ** 22;
 
 /** All that is fixed before the first step. */
 export interface ClosedPlan {
@@ -142,7 +142,7 @@ interface Attempt {
   readonly atMean: Extrapolation;
 }
 
-/** Refines until the bound is met, or only measures the first grid when that already shows that too much remains. */
+/** Refines until the bound is met, or until a calculation shows that a later end is needed and can be had. */
 async function attemptAt(
   plan: ClosedPlan,
   design: Design,
@@ -162,8 +162,10 @@ async function attemptAt(
     const t = transmission.add(1 / refinement, outcome.transmitted);
     reflection.add(1 / refinement, outcome.reflected);
     atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
-    if (tooMuchRemains(outcome, accuracy)) break;
-    if (t.error <= SPACING_SHARE * accuracy * t.value && outcomes.length >= FEWEST_CALCULATIONS) break;
+    if (prolonged(design, plan, outcome, accuracy)) break;
+    // Where too much remains for good, the grid need not be better than that.
+    const goal = SPACING_SHARE * Math.max(accuracy * t.value, outcome.unfinished);
+    if (t.error <= goal && outcomes.length >= FEWEST_CALCULATIONS) break;
   }
   return { outcomes, transmission, reflection, atMean };
 }
@@ -201,9 +203,11 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
   const r = reflection.result;
   const drift = Math.max(...outcomes.map((o) => o.outcome.drift));
   // Each calculation carries the drift of its norm as a relative error; the extrapolation adds them with weights below 30.
-  const roundOff = t.value * Math.min(1, 30 * (drift + Number.EPSILON * Math.sqrt(plan.steps)));
+  const value = Math.max(0, t.value);
+  const roundOff = value * Math.min(1, 30 * (drift + Number.EPSILON * Math.sqrt(plan.steps)));
   const remaining = outcome.unfinished;
-  const error = Math.min(1, t.error) + remaining + roundOff;
+  const start = startError(plan.from, value);
+  const others = remaining + start + roundOff;
   const widest = plan.stretches.reduce((h, s) => Math.max(h, (s.to - s.from) / s.cells), 0) / refinement;
   const finest =
     plan.stretches.reduce((h, s) => Math.min(h, (s.to - s.from) / s.cells), Infinity) / refinement;
@@ -211,8 +215,8 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
   return {
     stepper: crankNicolson.name,
     order: plan.order,
-    transmission: { value: t.value, error },
-    reflection: { value: r.value, error: Math.min(1, r.error) + remaining + roundOff },
+    transmission: { value, error: Math.min(1, t.error) + others },
+    reflection: { value: Math.max(0, r.value), error: Math.min(1, r.error) + others },
     remaining,
     normDrift: drift,
     grid: {
@@ -222,7 +226,7 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
       length_nm: ends[ends.length - 1].to - ends[0].from,
     },
     time: { step_fs: plan.timeStep, end_fs: plan.end, steps: plan.steps },
-    parts: { spacing: Math.min(1, t.error), timeStep: 0, remaining, roundOff },
+    parts: { spacing: Math.min(1, t.error), timeStep: 0, remaining, start, roundOff },
     runs: outcomes.map(
       (o): RunSummary => ({
         points: alignedPoints(plan.stretches, o.refinement),
@@ -240,10 +244,10 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
     ),
     carryingEnergy: carryingEnergy(outcome, plan.from),
     checks: [
-      ...commonChecks(design, plan.from, outcome, drift, accuracy, t.value),
+      ...commonChecks(design, plan.from, outcome, drift, accuracy, value),
       atMost(
         "spacing",
-        t.error / t.value,
+        relativeError(t.error, t.value),
         accuracy,
         "relative error left by the grid, from whole calculations on refined grids",
       ),

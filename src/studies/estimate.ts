@@ -5,6 +5,7 @@ import { stepperNamed } from "../steppers/registry.js";
 import { splitOperator } from "../steppers/split-operator.js";
 import { atMost, type Calculation, type Check, type StudyOptions } from "./calculation.js";
 import { chooseStepper } from "./choose-stepper.js";
+import { relativeError } from "./common-checks.js";
 import { crankNicolsonTransmission } from "./crank-nicolson-transmission.js";
 import { isForced } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
@@ -69,7 +70,7 @@ async function heldAgainstAutomatic(
   const transmission = widen(own.transmission, automatic.transmission);
   const check = atMost(
     "forced numerics",
-    transmission.error / own.transmission.value,
+    relativeError(transmission.error, own.transmission.value),
     accuracy,
     "relative distance to an automatic calculation, plus that one's own bound",
   );
@@ -85,12 +86,12 @@ async function heldAgainstAutomatic(
 function judged(design: Design, calculation: Calculation, accuracy: number): Estimate {
   const { value, error } = calculation.transmission;
   const from = departure(design);
-  const reached = error / value;
+  const reached = relativeError(error, value);
   const checks: Check[] = [
     ...calculation.checks,
     atMost(
       "accuracy",
-      Number.isFinite(reached) ? reached : 1,
+      reached,
       accuracy,
       "bound of the transmission relative to its value, against the accuracy asked for",
     ),
@@ -98,7 +99,7 @@ function judged(design: Design, calculation: Calculation, accuracy: number): Est
   return {
     ...calculation,
     design: { title: design.title, sha256: design.sha256 },
-    accuracy: { asked: accuracy, reached: Number.isFinite(reached) ? reached : 1 },
+    accuracy: { asked: accuracy, reached },
     meanEnergy: from.energy,
     backward: from.backward,
     checks,

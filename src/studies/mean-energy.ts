@@ -19,7 +19,9 @@ export function boundedAtMean(
   length: number,
 ): Bounded {
   const density = wavenumberWeight(from.k0, from.k0, from.packet.width);
-  const missing = Math.sqrt((outcome.unfinished * Math.max(length, from.packet.width)) / (2 * Math.PI * density));
+  const missing = Math.sqrt(
+    (outcome.unfinished * Math.max(length, from.packet.width)) / (2 * Math.PI * density),
+  );
   const amplitude = Math.sqrt(Math.max(0, value));
   return { value, error: extrapolationError + missing * (2 * amplitude + missing) };
 }

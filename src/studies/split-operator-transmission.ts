@@ -12,7 +12,7 @@ import { splitOperator } from "../steppers/split-operator.js";
 import { splittingOfOrder } from "../steppers/splittings.js";
 import { HBAR } from "../units/constants.js";
 import { atMost, type Calculation, type Check, type RunSummary, type StudyOptions } from "./calculation.js";
-import { commonChecks, structureLength } from "./common-checks.js";
+import { commonChecks, relativeError, startError, structureLength } from "./common-checks.js";
 import { forcedRoom } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
@@ -309,7 +309,8 @@ function summary(
     4 * drift * transmission +
     8 * Number.EPSILON * Number.EPSILON * steps * circle.points +
     4 * Number.EPSILON * Math.sqrt(steps) * Math.sqrt(transmission);
-  const error = spacing + time + outcome.unfinished + roundOff;
+  const start = startError(plan.from, transmission);
+  const error = spacing + time + outcome.unfinished + start + roundOff;
   const value = (x: number) => Math.min(1, Math.max(0, x));
   return {
     stepper: splitOperator.name,
@@ -325,7 +326,7 @@ function summary(
       length_nm: circle.points * circle.step,
     },
     time: { step_fs: timeStep, end_fs: plan.end, steps },
-    parts: { spacing, timeStep: time, remaining: outcome.unfinished, roundOff },
+    parts: { spacing, timeStep: time, remaining: outcome.unfinished, start, roundOff },
     runs: calculations.list(),
     atMeanEnergy: boundedAtMean(
       standing.atMean,
@@ -357,7 +358,7 @@ function refinementChecks(
     checks.push(
       atMost(
         "spacing",
-        spacing / transmission,
+        relativeError(spacing, transmission),
         accuracy,
         "relative error left by the grid, from a whole calculation with half the points",
       ),
@@ -366,7 +367,7 @@ function refinementChecks(
     checks.push(
       atMost(
         "time step",
-        time / transmission,
+        relativeError(time, transmission),
         accuracy,
         "relative error left by the time step, from a whole calculation with twice the step",
       ),
