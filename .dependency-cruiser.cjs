@@ -26,7 +26,6 @@ const NODE_PACKAGES = [
   "csv-stringify",
   "dejavu-fonts-ttf",
   "pngjs",
-  "write-file-atomic",
 ];
 
 const literally = (text) => text.replace(/[.*+?^${}()|[\]\\/]/g, "\\$&");

@@ -200,10 +200,7 @@ function choice(names: readonly string[], description: string) {
 function orderSchema() {
   const list = ORDERS.join(", ").replace(/, (?=[^,]*$)/, " or ");
   const error = ({ input }: Issue) =>
-    faultText(
-      `an order of ${list} is needed; got ${describeValue(input)}`,
-      "The order in the time step.",
-    );
+    faultText(`an order of ${list} is needed; got ${describeValue(input)}`, "The order in the time step.");
   return z.literal([...ORDERS], { error }).meta({ description: `order in the time step: ${list}` });
 }
 

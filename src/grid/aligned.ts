@@ -1,4 +1,4 @@
-import { kineticEnergy, wavenumberOf } from "../packets/gaussian.js";
+import { wavenumberOf } from "../packets/gaussian.js";
 import type { Potential } from "../potentials/potential.js";
 import { closedGrid, type Grid } from "./grid.js";
 import type { Departure, Room } from "./journey.js";
@@ -68,9 +68,4 @@ export function alignedGrid(stretches: readonly Stretch[], refinement: number): 
 /** Stretches whose spacing is as near to `step` (nm) as whole cells allow: a grid that the user asked for. */
 export function forcedStretches(stretches: readonly Stretch[], step: number): Stretch[] {
   return stretches.map((s) => ({ ...s, cells: Math.max(1, Math.round((s.to - s.from) / step)) }));
-}
-
-/** Energy (eV) up to which a spacing h resolves a wave with at least two nodes a period: hbar^2 (pi/h)^2 / 2m. */
-export function resolvedEnergy(step: number, mass: number): number {
-  return kineticEnergy(Math.PI / step, mass);
 }
