@@ -10,7 +10,7 @@ export class ForwardFft {
 
   /** @throws RangeError unless n is a power of two, at least 2 */
   constructor(readonly n: number) {
-    if (n < 2 || (n & (n - 1)) !== 0)
+    if (!(n >= 2) || (n & (n - 1)) !== 0)
       throw new RangeError(`FFT: a power of two is needed as the number of points; got ${n}`);
     this.transform = new FFT(n);
   }

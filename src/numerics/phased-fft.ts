@@ -26,7 +26,7 @@ export class PhasedFftPair {
 
   /** @throws RangeError unless n is a power of two, at least 8 */
   constructor(readonly n: number) {
-    if (n < 8 || (n & (n - 1)) !== 0)
+    if (!(n >= 8) || (n & (n - 1)) !== 0)
       throw new RangeError(`FFT: a power of two, at least 8, is needed as the number of points; got ${n}`);
     this.quarter = new FFT(n / PARTS);
     this.twiddles = new Float64Array((6 * n) / PARTS);

@@ -55,7 +55,7 @@ describe("transforms against the sum that defines them", () => {
 
   it("refuses what is no power of two, too few points, and its own input as output", () => {
     for (const n of [0, 1, 4, 12, 100, Number.NaN]) expect(() => new PhasedFftPair(n)).toThrow(RangeError);
-    for (const n of [0, 1, 3, 12]) expect(() => new ForwardFft(n)).toThrow(RangeError);
+    for (const n of [0, 1, 3, 12, Number.NaN]) expect(() => new ForwardFft(n)).toThrow(RangeError);
     const data = new Float64Array(16);
     expect(() => new ForwardFft(8).forward(data, data)).toThrow(/output/);
   });
