@@ -32,9 +32,6 @@ export function textWidth(text: string, size: number, weight: "regular" | "bold"
   return (sum / 1000) * size;
 }
 
-const labelWidth = (label: Label, size: number): number =>
-  label.reduce((sum, run) => sum + textWidth(run.text, size), 0);
-
 /** Where and how a label is set. */
 export interface TextPlace {
   readonly x: number;
