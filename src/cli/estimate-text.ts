@@ -39,7 +39,11 @@ function energies({ transmission, atMeanEnergy, meanEnergy, carryingEnergy }: Es
   const rows = [
     ["transmission of the packet", bounded(transmission), "all its energies, each with its weight"],
     ["transmission at its mean energy", bounded(atMeanEnergy), `a plane wave of ${energy(meanEnergy, 4)}`],
-    ["energy that carried most through", energy(carryingEnergy, 3), "the peak of the energies of what got through"],
+    [
+      "energy that carried most through",
+      energy(carryingEnergy, 3),
+      "the peak of the energies of what got through",
+    ],
   ];
   return `a packet is not its mean energy\n${table(rows, "  ")}`;
 }

@@ -23,7 +23,7 @@ export function estimateCommand(session: Session): Command {
   const command = new Command("estimate")
     .summary("transmission and reflection with bounds and a verdict")
     .description(
-      "Computes how much of the packet gets through and how much comes back, each with a bound on its error,\n" +
+      "Computes how much of the packet gets through and how much comes back, each with a bound on its error, " +
         "and says whether the answer can be trusted. Ends with 0 when it can, with 3 when it is doubtful.",
     )
     .argument("<FILE>", "design file")

@@ -19,7 +19,7 @@ export function potentialsCommand(_session: Session): Command {
   return new Command("potentials")
     .summary("the ready-made potentials and the shapes, or one of them in full")
     .description(
-      "Lists the ready-made potentials and the shapes. With a name: formula, parameters, source, values to check\n" +
+      "Lists the ready-made potentials and the shapes. With a name: formula, parameters, source, values to check " +
         "against, and a drawing of the profile.",
     )
     .argument("[NAME]", "a ready-made potential, a shape, or the path of a potential file of your own")

@@ -51,7 +51,7 @@ function buildProgram(session: Session): Command {
     .addHelpText(
       "after",
       "\nA design is a short YAML or JSON file with title, particle, potential and packet.\n" +
-        "Exit codes: 0 done, 1 a fault of the program, 2 wrong use or design, 3 done but doubtful, 130 interrupted.",
+        "Exit codes: 0 done, 1 fault of the program, 2 wrong use or design, 3 done but doubtful, 130 stopped.",
     );
   for (const make of COMMANDS) program.addCommand(make(session));
   for (const command of [program, ...program.commands]) {

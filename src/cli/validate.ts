@@ -19,7 +19,7 @@ export function validateCommand(_session: Session): Command {
   const command = new Command("validate")
     .summary("the design in full, with what is chosen automatically")
     .description(
-      "Reads a design and prints it in full: defaults filled in, every numeric choice with its reason, and warnings.\n" +
+      "Reads a design and prints it in full: defaults filled in, every numeric choice with its reason, and warnings. " +
         "Computes nothing.",
     )
     .argument("<FILE>", "design file")

@@ -5,13 +5,24 @@ const { postern, shell, write } = workplace();
 write("rect.yaml", RECTANGULAR);
 write("coarse.yaml", COARSE);
 /** It takes seconds, so two tests share it. */
-const coarse = { json: postern("estimate", "coarse.yaml", "--json"), text: postern("estimate", "coarse.yaml") };
+const coarse = {
+  json: postern("estimate", "coarse.yaml", "--json"),
+  text: postern("estimate", "coarse.yaml"),
+};
 
-/** Sizes that are nothing but round-off or a bound differ between machines; their digits become one x. */
-const sizesHidden = (text: string): string =>
-  text.replace(/\b\d+(?:\.\d+)?e-\d+\b/g, (size) => (size === "1e-6" || size === "1e-9" ? size : "x"));
-/** The last digits of a value and its bound likewise. */
-const digitsHidden = (text: string): string => text.replace(/(\d\.\d{3})\d*\(\d+\)/g, "$1...");
+/**
+ * What a better grid builder or another machine changes is hidden: sizes of round-off and bounds, the numbers of grid and
+ * time, and digits after the third. All else is exact.
+ */
+function stable(text: string): string {
+  return text
+    .replace(/\b\d+(?:\.\d+)?e-\d+\b/g, (size) => (size === "1e-6" || size === "1e-9" ? size : "x"))
+    .replace(/(\d\.\d{3})\d*\(\d+\) */g, "$1... ")
+    .replace(/^\(\d+\)/m, "(x)")
+    .replace(/^(?:grid|time) .*$/gm, (line) => line.replace(/\d+(?:\.\d+)?/g, "x"))
+    .replace(/ +limit/g, " limit")
+    .replace(/ +$/gm, "");
+}
 
 describe("postern estimate --json", () => {
   it("prints one document with the keys of the contract and exits 0", () => {
@@ -88,32 +99,32 @@ describe("postern estimate as text", () => {
   it("shows probabilities with bounds, the mean energy beside them, numerics, checks and the verdict", () => {
     const { code, out, err } = postern("estimate", "rect.yaml");
     expect({ code, err }).toEqual({ code: 0, err: "" });
-    expect(digitsHidden(sizesHidden(out))).toMatchInlineSnapshot(`
+    expect(stable(out)).toMatchInlineSnapshot(`
       "Rectangular barrier
 
       transmission  0.026...
       reflection    0.973...
 
-      (4) bounds the error, in units of the last digits: the true value of the model lies within it
+      (x): a bound on the error, in units of the last digits; the true value of the model lies within it
 
       a packet is not its mean energy
-        transmission of the packet        0.026...  all its energies, each with its weight
-        transmission at its mean energy   0.000...     a plane wave of 0.15 eV
-        energy that carried most through  0.101 eV         seldom the mean
+        transmission of the packet        0.026... all its energies, each with its weight
+        transmission at its mean energy   0.023... a plane wave of 0.15 eV
+        energy that carried most through  0.162 eV        the peak of the energies of what got through
 
       remaining   x of the packet, inside the structure or on its way at the end
       norm drift  x
       stepper     crank-nicolson, order 2
-      grid        4819 points, step 0.167 nm, finest 0.164 nm
-      time        113 steps of 5.81 fs, end 657 fs
+      grid        x points, step x nm, finest x nm
+      time        x steps of x fs, end x fs
 
       checks
-        passed  start      x  limit 1e-9
-        passed  packet     x  limit 1e-9
-        passed  norm       x  limit 1e-9
-        passed  remaining  x  limit 1e-6
-        passed  spacing    x   limit 1e-6
-        passed  accuracy   x   limit 1e-6
+        passed  start      x limit 1e-9
+        passed  packet     x limit 1e-9
+        passed  norm       x limit 1e-9
+        passed  remaining  x limit 1e-6
+        passed  spacing    x limit 1e-6
+        passed  accuracy   x limit 1e-6
 
       trusted: all checks passed; the bound is x of the transmission, 1e-6 was asked for
       "
