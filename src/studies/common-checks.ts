@@ -1,12 +1,11 @@
 import type { Departure } from "../grid/journey.js";
 import { normalTail } from "../numerics/erfc.js";
 import type { Potential } from "../potentials/potential.js";
-import type { Design } from "../problem/design.js";
 import { atMost, type Check } from "./calculation.js";
 import type { Outcome } from "./outcome.js";
 
 /** Largest |psi| of the start at the structure's face, relative to its peak, that counts as clear. */
-const CLEAR_AMPLITUDE = 1e-9;
+export const CLEAR_AMPLITUDE = 1e-9;
 /** Largest change of the norm over a calculation that counts as round-off. */
 const NORM_LIMIT = 1e-9;
 /** Largest error of the sampled packet's norm. */
@@ -18,12 +17,22 @@ export function relativeError(error: number, value: number): number {
   return value > 0 && Number.isFinite(relative) ? relative : Number.MAX_VALUE;
 }
 
+/** Probability of the part of the packet that lies beyond the face it meets from the start. */
+export function beyondFace({ distance, packet }: Departure): number {
+  return normalTail(distance / packet.width);
+}
+
+/** |psi| at that face at the start, relative to its peak: exp(-(distance / 2 sigma)^2). */
+export function amplitudeAtFace({ distance, packet }: Departure): number {
+  return Math.exp(-((Math.max(0, distance) / (2 * packet.width)) ** 2));
+}
+
 /**
  * What the part of the packet that lies beyond the near face from the start (probability P) may add to or take from the
  * transmission T: P + 2 sqrt(T P), as amplitudes add.
  */
 export function startError(from: Departure, transmitted: number): number {
-  const beyond = normalTail(from.distance / from.packet.width);
+  const beyond = beyondFace(from);
   return beyond + 2 * Math.sqrt(Math.max(0, transmitted) * beyond);
 }
 
@@ -34,18 +43,16 @@ export function structureLength(potential: Potential): number {
 
 /** The checks that every transmission calculation owes, whichever stepper it used. */
 export function commonChecks(
-  design: Design,
   from: Departure,
   outcome: Outcome,
   drift: number,
   accuracy: number,
   transmitted: number,
 ): Check[] {
-  const atFace = Math.exp(-((Math.max(0, from.distance) / (2 * design.packet.width)) ** 2));
   return [
     atMost(
       "start",
-      atFace,
+      amplitudeAtFace(from),
       CLEAR_AMPLITUDE,
       "the packet's amplitude at the structure's face at the start, relative to its peak",
     ),

@@ -21,7 +21,7 @@ import { HBAR } from "../units/constants.js";
 import { atMost, type Calculation, type RunSummary, type StudyOptions } from "./calculation.js";
 import { commonChecks, relativeError, startError, structureLength } from "./common-checks.js";
 import { forcedRoom } from "./forced.js";
-import { DesignLimitError } from "./limits.js";
+import { BRING_CLOSER, POINTS_LIMIT, refuseTooLarge } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { LAST_PART, type Outcome, runToEnd } from "./outcome.js";
 
@@ -38,8 +38,6 @@ const LEAST_PROLONGATION = 1.2;
 const MOST_PROLONGATION = 2.5;
 /** Work (nodes times steps) after which the end is no longer moved out and the grid no longer refined. */
 const WORK_LIMIT = 1e9;
-/** Nodes beyond which a design is refused. */
-const POINTS_LIMIT = 2 ** 22;
 
 /** All that is fixed before the first step. */
 export interface ClosedPlan {
@@ -51,7 +49,7 @@ export interface ClosedPlan {
   readonly steps: number;
   readonly room: Room;
   readonly stretches: readonly Stretch[];
-  /** The one refinement of a grid that the user asked for; undefined when refined until accurate. */
+  /** True for a grid that the user asked for, which is taken once and not refined. */
   readonly forced: boolean;
 }
 
@@ -119,11 +117,7 @@ async function outcomeOn(
   options: StudyOptions,
 ): Promise<Outcome> {
   const points = alignedPoints(plan.stretches, refinement);
-  if (points > POINTS_LIMIT)
-    throw new DesignLimitError(
-      "potential",
-      `this design needs ${points} grid points, more than ${POINTS_LIMIT}: its lengths lie too far apart, or its packet is too wide or too slow`,
-    );
+  refuseTooLarge(design, points, plan.steps, BRING_CLOSER);
   options.onProgress?.(`Crank-Nicolson, ${points} points, to ${plan.end.toPrecision(3)} fs`);
   const system = {
     grid: alignedGrid(plan.stretches, refinement),
@@ -155,7 +149,10 @@ async function attemptAt(
   const atMean = new Extrapolation();
   const outcomes: { refinement: number; outcome: Outcome }[] = [];
   for (const refinement of plan.forced ? [1] : REFINEMENTS) {
-    if (outcomes.length > 0 && alignedPoints(plan.stretches, refinement) * plan.steps > WORK_LIMIT) break;
+    const points = alignedPoints(plan.stretches, refinement);
+    // Two calculations are the fewest that give a bound; one alone had better be refused by its size.
+    if (outcomes.length > 0 && points * plan.steps > WORK_LIMIT) break;
+    if (outcomes.length > 1 && points > POINTS_LIMIT) break;
     const outcome =
       refinement === REFINEMENTS[0] ? pilot : await outcomeOn(plan, design, refinement, options);
     outcomes.push({ refinement, outcome });
@@ -183,9 +180,8 @@ function prolonged(
 ): ClosedPlan | undefined {
   if (design.numerics.end !== undefined || !tooMuchRemains(outcome, accuracy)) return undefined;
   const next = planClosed(design, plan.end * prolongation(outcome, accuracy));
-  return alignedPoints(next.stretches, plan.forced ? 1 : REFINEMENTS[0]) * next.steps > WORK_LIMIT / 4
-    ? undefined
-    : next;
+  const points = alignedPoints(next.stretches, REFINEMENTS[0]);
+  return points > POINTS_LIMIT || points * next.steps > WORK_LIMIT / 4 ? undefined : next;
 }
 
 /** Factor on the end that should do if what is inside goes on decaying as it did over the last tenth of the time. */
@@ -203,11 +199,12 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
   const r = reflection.result;
   const drift = Math.max(...outcomes.map((o) => o.outcome.drift));
   // Each calculation carries the drift of its norm as a relative error; the extrapolation adds them with weights below 30.
+  const rounding = Math.min(1, 30 * (drift + Number.EPSILON * Math.sqrt(plan.steps)));
   const value = Math.max(0, t.value);
-  const roundOff = value * Math.min(1, 30 * (drift + Number.EPSILON * Math.sqrt(plan.steps)));
+  const reflected = Math.max(0, r.value);
+  const roundOff = value * rounding;
   const remaining = outcome.unfinished;
   const start = startError(plan.from, value);
-  const others = remaining + start + roundOff;
   const widest = plan.stretches.reduce((h, s) => Math.max(h, (s.to - s.from) / s.cells), 0) / refinement;
   const finest =
     plan.stretches.reduce((h, s) => Math.min(h, (s.to - s.from) / s.cells), Infinity) / refinement;
@@ -215,8 +212,11 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
   return {
     stepper: crankNicolson.name,
     order: plan.order,
-    transmission: { value, error: Math.min(1, t.error) + others },
-    reflection: { value: Math.max(0, r.value), error: Math.min(1, r.error) + others },
+    transmission: { value, error: Math.min(1, t.error) + remaining + start + roundOff },
+    reflection: {
+      value: reflected,
+      error: Math.min(1, r.error) + remaining + start + reflected * rounding,
+    },
     remaining,
     normDrift: drift,
     grid: {
@@ -244,7 +244,7 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
     ),
     carryingEnergy: carryingEnergy(outcome, plan.from),
     checks: [
-      ...commonChecks(design, plan.from, outcome, drift, accuracy, value),
+      ...commonChecks(plan.from, outcome, drift, accuracy, value),
       atMost(
         "spacing",
         relativeError(t.error, t.value),

@@ -1,10 +1,10 @@
 import { alignedPoints } from "../grid/aligned.js";
 import { type Departure, departure } from "../grid/journey.js";
-import { erfc } from "../numerics/erfc.js";
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
 import { stepperNamed } from "../steppers/registry.js";
 import { splitOperator } from "../steppers/split-operator.js";
 import { chooseStepper } from "./choose-stepper.js";
+import { amplitudeAtFace, beyondFace, CLEAR_AMPLITUDE } from "./common-checks.js";
 import { planClosed, REFINEMENTS } from "./crank-nicolson-transmission.js";
 import { isForced } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
@@ -28,8 +28,8 @@ export interface Explanation {
 const BACKWARD_LIMIT = 1e-6;
 /** Spread of the energy relative to its mean above which the mean says little. */
 const BROAD = 0.25;
-/** |psi| at the face relative to the peak above which the packet does not start clear. */
-const CLEAR = 1e-9;
+/** Probability beyond the face from the start above which it is worth a warning. */
+const BEYOND_LIMIT = 1e-12;
 
 /**
  * Every numeric choice of an estimate with its reason, and what would be warned about; computes no transmission.
@@ -115,7 +115,7 @@ function closedChoices(design: Design): Choice[] {
       unit: "fs",
       why: forcedOr(
         numerics.timeStep !== undefined,
-        "as large as lets the packet's fastest and slowest parts pass at half their speed or better",
+        "as large as lets the packet's slowest part, which decides the end, pass at half its speed or better; fast parts may be slowed to its pace",
       ),
     },
     {
@@ -254,13 +254,13 @@ function warningsFor(design: Design, from: Departure): string[] {
     warnings.push(
       `A share of ${from.backward.toPrecision(1)} of the packet moves away from the structure from the start and counts as reflected.`,
     );
-  const atFace = Math.exp(-((Math.max(0, from.distance) / (2 * packet.width)) ** 2));
-  if (atFace > CLEAR)
+  const atFace = amplitudeAtFace(from);
+  if (atFace > CLEAR_AMPLITUDE)
     warnings.push(
       `The packet does not start clear of the structure: its amplitude at the face is ${atFace.toPrecision(1)} of its peak. Start it ${(10 * packet.width).toPrecision(3)} nm away or more.`,
     );
-  const beyond = 0.5 * erfc(Math.max(0, from.distance) / (Math.SQRT2 * packet.width));
-  if (beyond > 1e-12)
+  const beyond = beyondFace(from);
+  if (beyond > BEYOND_LIMIT)
     warnings.push(
       `A probability of ${beyond.toPrecision(1)} lies beyond the structure's face from the start.`,
     );

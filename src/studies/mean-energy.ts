@@ -2,14 +2,15 @@ import type { Bounded } from "../analysis/results.js";
 import type { Departure } from "../grid/journey.js";
 import { wavenumberOf, wavenumberWeight } from "../packets/gaussian.js";
 import { HBAR } from "../units/constants.js";
+import { beyondFace } from "./common-checks.js";
 import type { Outcome } from "./outcome.js";
 
 /** Energies at which the distribution of what got through is looked at. */
 const SAMPLES = 60;
 
 /**
- * T at the mean energy with its bound: what the extrapolation left, and what the amplitude still inside the structure or near it
- * (probability P over a length L) can add to the projection on one plane wave, sqrt(P L) at most.
+ * T at the mean energy with its bound: what the extrapolation left, and what the amplitude still inside the structure or near it, or
+ * beyond its face from the start (probability P over a length L) can add to the projection on one plane wave, sqrt(P L) at most.
  */
 export function boundedAtMean(
   value: number,
@@ -20,7 +21,7 @@ export function boundedAtMean(
 ): Bounded {
   const density = wavenumberWeight(from.k0, from.k0, from.packet.width);
   const missing = Math.sqrt(
-    (outcome.unfinished * Math.max(length, from.packet.width)) / (2 * Math.PI * density),
+    ((outcome.unfinished + beyondFace(from)) * Math.max(length, from.packet.width)) / (2 * Math.PI * density),
   );
   const amplitude = Math.sqrt(Math.max(0, value));
   return { value, error: extrapolationError + missing * (2 * amplitude + missing) };

@@ -1,4 +1,4 @@
-import { alignedGrid, alignedStretches, forcedStretches } from "../grid/aligned.js";
+import { alignedGrid, alignedPoints, alignedStretches, forcedStretches } from "../grid/aligned.js";
 import { circleFor, circleGrid, firstSpacing, largestTimeStep, refined } from "../grid/circle.js";
 import { type Departure, departure, passage, type Room, roomFor } from "../grid/journey.js";
 import { sampleGaussian } from "../packets/gaussian.js";
@@ -7,14 +7,14 @@ import type { Run } from "../propagate.js";
 import { crankNicolson } from "../steppers/crank-nicolson.js";
 import { stepperNamed } from "../steppers/registry.js";
 import { splitOperator } from "../steppers/split-operator.js";
-import { splittingOfOrder } from "../steppers/splittings.js";
 import type { Stepper } from "../steppers/stepper.js";
 import { HBAR } from "../units/constants.js";
 import { chooseStepper } from "./choose-stepper.js";
 import { structureLength } from "./common-checks.js";
 import { type ConfinedMotion, confinedMotion } from "./confined.js";
 import { forcedRoom } from "./forced.js";
-import { DesignLimitError } from "./limits.js";
+import { BRING_CLOSER, DesignLimitError, refuseTooLarge } from "./limits.js";
+import { largestDrift } from "./split-operator-transmission.js";
 
 /** Order of the Crank-Nicolson step where the time itself must be right. */
 const TRUE_TIME_ORDER = 6;
@@ -25,13 +25,11 @@ const SPLIT_PHASE: Readonly<Record<number, number>> = { 2: 0.05, 4: 0.4, 6: 0.8 
 /** Fewest steps of a run that is to be looked at. */
 const FEWEST_STEPS = 480;
 /** Steps come in multiples of this, so that coarser twins pass through the same instants. */
-export const STEP_MULTIPLE = 40;
+const STEP_MULTIPLE = 40;
 /** Refinement of the interface-aligned grid: a phase of 0.13 per cell at the packet's edge. */
 const REFINEMENT = 6;
 /** Spreads of k to either side that have passed when a run ends. */
 const PASSED_SPREADS = 3;
-/** Work (nodes times steps times solutions) beyond which a run is refused. */
-const WORK_LIMIT = 2e10;
 
 /** A run whose own time is right, with the facts that a reader of its results needs. */
 export interface PreparedRun extends Run {
@@ -66,11 +64,6 @@ export function prepare(design: Design, options: PrepareOptions = {}): PreparedR
       : closedRun(design, from, end, motion, options);
   const steps = Math.max(1, Math.round(end / stepper.timeStep));
   const n = stepper.system.grid.x.length;
-  if (n * steps > WORK_LIMIT)
-    throw new DesignLimitError(
-      "potential",
-      `following this packet would need ${n} points and ${steps} steps; bring its lengths and energies closer together, or give numerics.end`,
-    );
   const psi = new Float64Array(2 * n);
   sampleGaussian(psi, stepper.system.grid.x, from.packet);
   return { stepper, psi, steps, from, end: steps * stepper.timeStep };
@@ -105,15 +98,18 @@ function closedRun(
   const length = stretches[stretches.length - 1].to - stretches[0].from;
   const step = numerics.step ?? (numerics.points === undefined ? undefined : length / (numerics.points - 1));
   const fineness = options.fineness ?? 1;
-  const grid =
+  const [chosen, refinement] =
     step === undefined
-      ? alignedGrid(stretches, REFINEMENT * fineness)
-      : alignedGrid(forcedStretches(stretches, step / fineness), 1);
+      ? [stretches, REFINEMENT * fineness]
+      : [forcedStretches(stretches, step / fineness), 1];
   const order = numerics.order ?? TRUE_TIME_ORDER;
   const largest =
     (PHASE_PER_STEP[order] * HBAR) / Math.max(from.highest - from.energy, from.energy - from.lowest);
+  const timeStep = timeStepFor(design, end, largest, options.stepFineness);
+  refuseTooLarge(design, alignedPoints(chosen, refinement), Math.round(end / timeStep), BRING_CLOSER);
+  const grid = alignedGrid(chosen, refinement);
   const system = { grid, potential, particleMass, referenceEnergy: from.energy };
-  return crankNicolson.prepare(system, timeStepFor(design, end, largest, options.stepFineness), order);
+  return crankNicolson.prepare(system, timeStep, order);
 }
 
 function splitRun(
@@ -125,28 +121,25 @@ function splitRun(
 ): Stepper {
   const { potential, numerics, particleMass } = design;
   const spacing = numerics.step ?? firstSpacing(potential, from) / 2;
-  const circle =
+  const whole =
     motion?.circle(numerics.points) ??
     circleFor(potential, from, room(design, from, end), spacing, {
       points: numerics.points,
       keepStep: numerics.step !== undefined && numerics.length === undefined,
       tight: numerics.length !== undefined,
     });
-  const grid = circleGrid(refined(circle, Math.round(Math.log2(options.fineness ?? 1))));
+  const circle = refined(whole, Math.round(Math.log2(options.fineness ?? 1)));
   const jumps = potential.slopeTransform !== undefined;
   const order = numerics.order ?? (jumps ? 2 : 6);
   const top = Math.max(
     from.highest - potential.lowest,
     potential.confining ? 0 : potential.highest - potential.lowest,
   );
-  const drift = Math.max(...(splittingOfOrder(order)?.a ?? [1]).map(Math.abs));
   const largest = Math.min(
     (SPLIT_PHASE[order] * HBAR) / top,
-    jumps ? largestTimeStep(grid.finest, particleMass, drift) : Number.POSITIVE_INFINITY,
+    jumps ? largestTimeStep(circle.step, particleMass, largestDrift(order)) : Number.POSITIVE_INFINITY,
   );
-  return splitOperator.prepare(
-    { grid, potential, particleMass },
-    timeStepFor(design, end, largest, options.stepFineness),
-    order,
-  );
+  const timeStep = timeStepFor(design, end, largest, options.stepFineness);
+  refuseTooLarge(design, circle.points, Math.round(end / timeStep), "use crank-nicolson");
+  return splitOperator.prepare({ grid: circleGrid(circle), potential, particleMass }, timeStep, order);
 }

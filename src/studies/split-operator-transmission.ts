@@ -14,7 +14,7 @@ import { HBAR } from "../units/constants.js";
 import { atMost, type Calculation, type Check, type RunSummary, type StudyOptions } from "./calculation.js";
 import { commonChecks, relativeError, startError, structureLength } from "./common-checks.js";
 import { forcedRoom } from "./forced.js";
-import { DesignLimitError } from "./limits.js";
+import { refuseTooLarge } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { type Outcome, runToEnd } from "./outcome.js";
 
@@ -36,11 +36,12 @@ const FIRST_TIME_PHASE: Readonly<Record<number, { readonly phase: number; readon
 const TIME_CAUTION: Readonly<Record<number, number>> = { 2: 0.5, 4: 0.15, 6: 0.06 };
 const REMAINING_SHARE = 0.1;
 const PROLONGATION = 1.4;
-/** Work (points times transforms) after which nothing is refined or prolonged any more. */
 /** Start of the packet in its own widths from the structure; a transform's rounding hides what is smaller than this leaves. */
 const CLEARANCE = 10;
+/** Work (points times transforms) after which nothing is refined or prolonged any more. */
 const WORK_LIMIT = 8e8;
-const POINTS_LIMIT = 2 ** 20;
+/** Points beyond which a circle is refused: its tables grow with every halving of the spacing. */
+const CIRCLE_LIMIT = 2 ** 20;
 
 /** All that is fixed before the first step. */
 export interface CirclePlan {
@@ -55,8 +56,8 @@ export interface CirclePlan {
 
 const exact = { kind: "exact" } as const;
 
-/** Largest |a| of the splitting's drifts. */
-function largestDrift(order: number): number {
+/** Largest |a| of the drifts of the splitting of an order. */
+export function largestDrift(order: number): number {
   return Math.max(...(splittingOfOrder(order)?.a ?? [1]).map(Math.abs));
 }
 
@@ -73,12 +74,8 @@ export function planCircle(design: Design, accuracy: number, end?: number): Circ
     keepStep: numerics.step !== undefined && numerics.length === undefined,
     tight: numerics.length !== undefined,
   });
-  if (circle.points > POINTS_LIMIT)
-    throw new DesignLimitError(
-      "potential",
-      `the split operator would need ${circle.points} points for this design, more than ${POINTS_LIMIT}; use crank-nicolson`,
-    );
   const timeStep = numerics.timeStep ?? firstTimeStep(order, accuracy, fastestRate(design, from));
+  refuseTooLarge(design, circle.points, Math.ceil(wanted / timeStep), "use crank-nicolson", CIRCLE_LIMIT);
   return {
     from,
     order,
@@ -337,7 +334,7 @@ function summary(
     ),
     carryingEnergy: carryingEnergy(outcome, plan.from),
     checks: [
-      ...commonChecks(design, plan.from, outcome, drift, accuracy, transmission),
+      ...commonChecks(plan.from, outcome, drift, accuracy, transmission),
       ...refinementChecks(design, plan, standing, timeStep, circle, accuracy),
     ],
   };
