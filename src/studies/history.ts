@@ -2,6 +2,7 @@ import { DensityRecorder, type MapWindow } from "../analysis/density-recorder.js
 import { core } from "../analysis/probabilities.js";
 import type { DensityMap, Series } from "../analysis/results.js";
 import { SeriesRecorder } from "../analysis/series-recorder.js";
+import type { Departure } from "../grid/journey.js";
 import type { Design } from "../problem/design.js";
 import { propagate } from "../propagate.js";
 import { HBAR } from "../units/constants.js";
@@ -53,12 +54,11 @@ export interface History {
  * @throws DesignLimitError when the design cannot be computed as written; rejects with the signal's reason when stopped
  */
 export async function history(design: Design, options: HistoryOptions = {}): Promise<History> {
-  let end = options.window?.tTo === undefined ? undefined : options.window.tTo;
+  let end = options.window?.tTo;
   for (let attempt = 0; ; attempt++) {
     const run = prepare(design, { end });
     const seen = await follow(design, run, options);
-    const fixed =
-      design.numerics.end !== undefined || (end !== undefined && options.window?.tTo !== undefined);
+    const fixed = design.numerics.end !== undefined || options.window?.tTo !== undefined;
     if (fixed || design.potential.confining || attempt === PROLONGATIONS || !stillInside(seen.series))
       return withErrors(design, run, seen, options);
     end = run.end * PROLONGATION;
@@ -80,19 +80,20 @@ async function follow(design: Design, run: PreparedRun, options: HistoryOptions)
   const { stepper, from } = run;
   const every = Math.max(1, Math.floor(run.steps / SERIES_ROWS));
   const series = new SeriesRecorder(stepper, every, from.direction);
-  const density = new DensityRecorder(stepper.system.grid, windowOf(design, run, options));
   const window = windowOf(design, run, options);
-  const apart = run.steps / COMPARED_INSTANTS;
+  const density = new DensityRecorder(stepper.system.grid, window);
+  const apart = run.end / COMPARED_INSTANTS;
   const instants = new DensityRecorder(
     stepper.system.grid,
     {
       ...window,
-      tFrom: 0,
-      tTo: (run.end * (COMPARED_INSTANTS + 1)) / COMPARED_INSTANTS,
+      // Every instant stands in the middle of a row of its own, safe from the rounding of its time.
+      tFrom: -0.5 * apart,
+      tTo: run.end + 0.5 * apart,
       columns: COMPARED_COLUMNS,
       rows: COMPARED_INSTANTS + 1,
     },
-    Math.max(1, Math.round(apart)),
+    Math.max(1, Math.round(run.steps / COMPARED_INSTANTS)),
   );
   await propagate(run, [series, density, instants], {
     signal: options.signal,
@@ -108,21 +109,35 @@ function windowOf(design: Design, run: PreparedRun, options: HistoryOptions): Ma
   const asked = options.window ?? {};
   const [left, right] = potential.confining ? [grid.x[0], grid.x[grid.x.length - 1]] : core(potential);
   const margin = potential.confining ? 0 : SHOWN_WIDTHS * packet.width + (right - left) / 2;
+  const [first, last] = [grid.x[0], grid.x[grid.x.length - 1]];
   const speed = (from.k0 * HBAR) / from.mass;
-  const arrival =
-    speed > 0 && !potential.confining ? (from.distance - SHOWN_WIDTHS * packet.width) / speed : 0;
-  const departed =
-    potential.confining || speed === 0
-      ? end
-      : (from.distance + SHOWN_WIDTHS * packet.width + (right - left)) / speed;
+  const seen = potential.confining || speed === 0 ? [0, end] : passageTimes(from, right - left, speed);
+  // What was asked for may lie outside of what is chosen; then the rest of the box or of the time is shown.
+  const [xFrom, xTo] = range(asked.xFrom, asked.xTo, [left - margin, right + margin], [first, last]);
+  const [tFrom, tTo] = range(asked.tFrom, asked.tTo, seen, [0, end]);
   return {
-    xFrom: asked.xFrom ?? Math.max(grid.x[0], left - margin),
-    xTo: asked.xTo ?? Math.min(grid.x[grid.x.length - 1], right + margin),
-    tFrom: asked.tFrom ?? Math.max(0, arrival),
-    tTo: asked.tTo ?? Math.min(end, departed),
+    xFrom,
+    xTo,
+    tFrom,
+    tTo,
     columns: options.columns ?? MAP_COLUMNS,
     rows: options.rows ?? MAP_ROWS,
   };
+}
+
+type Pair = readonly number[];
+
+/** When the packet's front gets to the structure and when its rear has passed, fs, by classical motion at its mean speed (nm/fs). */
+function passageTimes({ distance, packet }: Departure, length: number, speed: number): Pair {
+  const shown = SHOWN_WIDTHS * packet.width;
+  return [(distance - shown) / speed, (distance + shown + length) / speed];
+}
+
+/** A range from what was asked for, else what was chosen, else the whole: the first of these that leaves a range. */
+function range(from: number | undefined, to: number | undefined, chosen: Pair, whole: Pair): Pair {
+  const [low, high] = [Math.max(whole[0], chosen[0]), Math.min(whole[1], chosen[1])];
+  const first = from ?? (low < (to ?? high) ? low : whole[0]);
+  return [first, to ?? (first < high ? high : whole[1])];
 }
 
 function stillInside(series: Series): boolean {
