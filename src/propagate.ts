@@ -30,6 +30,7 @@ export async function propagate(
 ): Promise<void> {
   const { stepper, psi, steps } = run;
   const dt = stepper.timeStep;
+  options.signal?.throwIfAborted();
   for (const recorder of recorders) recorder.record(0, psi);
   let lastBreath = performance.now();
   for (let step = 1; step <= steps; step++) {

@@ -1,10 +1,5 @@
-import {
-  type GaussianPacket,
-  kineticEnergy,
-  wavenumberOf,
-  wavenumberSpread,
-  weightAbove,
-} from "../packets/gaussian.js";
+import { normalTail } from "../numerics/erfc.js";
+import { type GaussianPacket, kineticEnergy, wavenumberOf, wavenumberSpread } from "../packets/gaussian.js";
 import type { Design } from "../problem/design.js";
 import { HBAR } from "../units/constants.js";
 
@@ -66,7 +61,7 @@ export function departure(design: Design, clearance = CLEARANCE_WIDTHS): Departu
     lowest: near + kineticEnergy(Math.max(0, k0 - PROMPT_SPREADS * spread), mass),
     highest: near + kineticEnergy(k0 + PROMPT_SPREADS * spread, mass),
     distance: direction * (face - center),
-    backward: 1 - weightAbove(0, k0, packet.width),
+    backward: normalTail(k0 / spread),
   };
 }
 

@@ -1,4 +1,3 @@
-import { normalTail } from "../numerics/erfc.js";
 import { HBAR } from "../units/constants.js";
 
 /**
@@ -32,11 +31,6 @@ export function wavenumberSpread(width: number): number {
 /** |phi(k)|^2 = sqrt(2/pi) sigma exp(-2 sigma^2 (k - k0)^2), probability per wavenumber, nm. */
 export function wavenumberWeight(k: number, k0: number, width: number): number {
   return Math.sqrt(2 / Math.PI) * width * Math.exp(-2 * width * width * (k - k0) ** 2);
-}
-
-/** Probability that the packet's |k| lies above `k` in its own direction of travel (k0 counted positive). */
-export function weightAbove(k: number, k0: number, width: number): number {
-  return normalTail((k - k0) / wavenumberSpread(width));
 }
 
 /** Writes psi into `out` (interleaved, length 2n) at the nodes x (nm), in 1/sqrt(nm). Cost O(n). */
