@@ -1,0 +1,94 @@
+import { describe, expect, it } from "vitest";
+import { Extrapolation } from "../../src/numerics/extrapolation.js";
+
+/** Spacings of the Crank-Nicolson study, relative to its first. */
+const CELLS = [1, 2, 3, 4, 6, 8];
+
+function extrapolated(cells: readonly number[], f: (h: number) => number) {
+  const tableau = new Extrapolation();
+  return cells.map((n) => tableau.add(1 / n, f(1 / n)));
+}
+
+/** Trapezoidal rule with n panels: its error is a series in h^2 (Euler-Maclaurin). */
+function trapezoid(f: (x: number) => number, a: number, b: number, n: number): number {
+  const h = (b - a) / n;
+  let sum = 0.5 * (f(a) + f(b));
+  for (let i = 1; i < n; i++) sum += f(a + i * h);
+  return sum * h;
+}
+
+describe("extrapolation to vanishing spacing", () => {
+  it.each([1, 2, 3, 4, 5])(
+    "is exact for a polynomial of degree %i in h^2 once it has one value more",
+    (degree) => {
+      const coefficients = [0.3, -2, 1.5, 4, -3, 0.7].slice(0, degree + 1);
+      const steps = extrapolated(CELLS, (h) => coefficients.reduce((sum, c, j) => sum + c * h ** (2 * j), 0));
+      expect(Math.abs(steps[degree].value - 0.3)).toBeLessThan(1e-13);
+      // And not before, or the test would show nothing.
+      expect(Math.abs(steps[degree - 1].value - 0.3)).toBeGreaterThan(1e-5);
+    },
+  );
+
+  it("has no bound after one measurement and the bare change after two", () => {
+    const tableau = new Extrapolation();
+    expect(tableau.result).toEqual({ value: Number.NaN, error: Number.POSITIVE_INFINITY });
+    expect(tableau.add(1, 5)).toEqual({ value: 5, error: Number.POSITIVE_INFINITY });
+    // 4 + (4 - 5) / (4 - 1); the larger of the changes is that on the diagonal.
+    const { value, error } = tableau.add(0.5, 4);
+    expect(value).toBeCloseTo(4 - 1 / 3, 15);
+    expect(error).toBeCloseTo(4 / 3, 15);
+    expect(tableau.result).toEqual({ value, error });
+  });
+
+  const integrals: readonly (readonly [string, (x: number) => number, number, number, number])[] = [
+    ["exp x from 0 to 1", Math.exp, 0, 1, Math.E - 1],
+    ["sin x from 0 to pi", Math.sin, 0, Math.PI, 2],
+    ["1/(1 + x^2) from 0 to 1", (x) => 1 / (1 + x * x), 0, 1, Math.PI / 4],
+    ["1/x from 1 to 4", (x) => 1 / x, 1, 4, Math.log(4)],
+    ["cos 5x from 0 to 2", (x) => Math.cos(5 * x), 0, 2, Math.sin(10) / 5],
+    [
+      "1/(0.1 + x^2) from -1 to 1",
+      (x) => 1 / (0.1 + x * x),
+      -1,
+      1,
+      (2 / Math.sqrt(0.1)) * Math.atan(1 / Math.sqrt(0.1)),
+    ],
+  ];
+  it.each(integrals)(
+    "of the trapezoidal rule for %s keeps its bound from the fourth value on",
+    (_title, f, a, b, exact) => {
+      const steps = extrapolated([...CELLS, 12, 16], (h) => trapezoid(f, a, b, Math.round(4 / h)));
+      for (const { value, error } of steps.slice(3))
+        expect(Math.abs(value - exact)).toBeLessThanOrEqual(error + 1e-14 * Math.abs(exact));
+      const last = steps[steps.length - 1];
+      expect(last.error).toBeLessThan(1e-5 * Math.abs(exact));
+      // Worth the name: far better than its best measurement.
+      expect(Math.abs(last.value - exact)).toBeLessThan(
+        1e-4 * Math.abs(trapezoid(f, a, b, 64) - exact) + 1e-14,
+      );
+    },
+  );
+
+  it("does not take one small change for convergence: the change before has a say", () => {
+    const tableau = new Extrapolation();
+    // Made so that the third value happens to equal the extrapolated second one, in row and diagonal.
+    tableau.add(1, 1);
+    const second = tableau.add(0.5, 2);
+    const straight = (h: number) => second.value + (1 - second.value) * h * h;
+    const third = tableau.add(1 / 3, straight(1 / 3));
+    expect(Math.abs(third.value - second.value)).toBeLessThan(1e-12);
+    expect(third.error).toBeGreaterThan(1e-3);
+  });
+
+  it("passes NaN on as a bound that nothing meets", () => {
+    const steps = extrapolated([1, 2, 3], (h) => (h < 0.4 ? Number.NaN : h));
+    expect(steps[2].error <= 1).toBe(false);
+  });
+
+  it("refuses spacings that do not fall, and says which", () => {
+    const tableau = new Extrapolation();
+    tableau.add(0.5, 1);
+    expect(() => tableau.add(0.5, 1)).toThrow(/spacings must fall; got 0\.5 after 0\.5/);
+    expect(() => tableau.add(Number.NaN, 1)).toThrow(RangeError);
+  });
+});
