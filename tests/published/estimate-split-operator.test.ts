@@ -31,7 +31,7 @@ describe("reflectionless wells -l(l+1) hbar^2/(2 m a^2) / cosh^2(x/a): R = 0 at 
     "l = %i: what a split-operator run has left of the well at the end is below 1e-12",
     async (order) => {
       // A step at which the splitting of order 6 itself reflects far less than that.
-      const numerics = "{ stepper: split-operator, timeStep: 0.2 fs }";
+      const numerics = "{ stepper: split-operator, timeStep: 0.3 fs }";
       const design = readDesign(designText({ ...well(order), numerics }));
       const run = prepare(design, { end: 330 });
       await propagate(run);
