@@ -70,7 +70,7 @@ async function stepRows(): Promise<{ rows: Row[]; python: string }> {
 }
 
 async function processRows(): Promise<Row[]> {
-  const args = [`${root}dist/cli/main.js`, "estimate", example];
+  const args = [`${root}dist/bin/postern.js`, "estimate", example];
   const bare = wallTime(process.execPath, ["-e", "0"], PROCESS_RUNS);
   const wall = wallTime(process.execPath, args, PROCESS_RUNS);
   const memory = await peakMemory(process.execPath, args);
