@@ -242,7 +242,7 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
       plan.from,
       structureLength(design.potential),
     ),
-    carryingEnergy: carryingEnergy(outcome, plan.from),
+    carryingEnergy: carryingEnergy(outcome, plan.from, outcomes[Math.min(1, outcomes.length - 1)].outcome),
     checks: [
       ...commonChecks(plan.from, outcome, drift, accuracy, value),
       atMost(
