@@ -77,6 +77,7 @@ async function heldAgainstAutomatic(
   return {
     ...own,
     transmission,
+    parts: { ...own.parts, spacing: Math.abs(own.transmission.value - automatic.transmission.value) },
     reflection: widen(own.reflection, automatic.reflection),
     atMeanEnergy: widen(own.atMeanEnergy, automatic.atMeanEnergy),
     checks: [...own.checks.filter((c) => c.name !== "spacing"), check],
