@@ -11,9 +11,9 @@ import { energyRange, massStretches, type Profile, pointsOf, sampleProfile } fro
 import { type ProfilePanel, profilePanel } from "./profile-panel.js";
 import { resample } from "./resample.js";
 import { straight } from "./svg.js";
-import { symbol } from "./text.js";
-import { baseSize, PAPER } from "./theme.js";
-import { linearTicks, superscript } from "./ticks.js";
+import { symbol, textWidth } from "./text.js";
+import { baseSize, PAPER, TICK_TEXT } from "./theme.js";
+import { fittingTicks, linearTicks, superscript } from "./ticks.js";
 
 /** How a map is drawn; xFromNm and its like show a part of it. */
 export interface MapFigureOptions extends WindowOptions {
@@ -31,6 +31,8 @@ export interface MapFigureOptions extends WindowOptions {
   readonly colourMap?: ColourMapName;
 }
 
+/** Share of the page's width that the map keeps at least, beside long notes. */
+const LEAST_MAP_SHARE = 0.6;
 /** Print width of a figure: the text width of an A4 page with usual margins (common practice, no source). */
 export const DEFAULT_WIDTH_MM = 160;
 /** Height of a map figure over its width. */
@@ -104,7 +106,14 @@ function mapAxes(
     x: {
       from: xFrom,
       to: xTo,
-      ticks: linearTicks(xFrom, xTo, Math.max(3, Math.round(size.width / (5.5 * em)))),
+      ticks: fittingTicks(
+        xFrom,
+        xTo,
+        Math.max(3, Math.round(size.width / (5.5 * em))),
+        LEAST_MAP_SHARE * size.width,
+        em,
+        (label) => textWidth(label, TICK_TEXT * em),
+      ),
       label: [{ text: "position " }, symbol("x"), { text: ` (${name})` }],
     },
     time: {

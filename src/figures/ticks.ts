@@ -14,6 +14,23 @@ export function linearTicks(from: number, to: number, count: number): Tick[] {
   return scale.ticks(count).map((value) => ({ value, label: label(value) }));
 }
 
+/** The same along a line of text `room` px long: no more ticks than leave `gap` px between the labels. */
+export function fittingTicks(
+  from: number,
+  to: number,
+  count: number,
+  room: number,
+  gap: number,
+  widthOf: (label: string) => number,
+): Tick[] {
+  for (let wanted = count; ; wanted--) {
+    const ticks = linearTicks(from, to, wanted);
+    if (ticks.length < 2 || wanted <= 2) return ticks;
+    const apart = (room * (ticks[1].value - ticks[0].value)) / (to - from);
+    if (apart >= Math.max(...ticks.map(({ label }) => widthOf(label))) + gap) return ticks;
+  }
+}
+
 const SUPERSCRIPTS: Readonly<Record<string, string>> = {
   "-": "⁻",
   "0": "⁰",
