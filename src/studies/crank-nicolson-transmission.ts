@@ -161,14 +161,23 @@ async function attemptAt(
     atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
     if (prolonged(design, plan, outcome, accuracy)) break;
     // Where too much remains for good, the grid need not be better than that.
-    const goal = SPACING_SHARE * Math.max(accuracy * t.value, outcome.unfinished);
+    const goal = SPACING_SHARE * Math.max(accuracy * t.value, outcome.unfinished, roundingFloor(plan.steps));
     if (t.error <= goal && outcomes.length >= FEWEST_CALCULATIONS) break;
   }
   return { outcomes, transmission, reflection, atMean };
 }
 
-function tooMuchRemains(outcome: Outcome, accuracy: number): boolean {
-  return outcome.unfinished > REMAINING_SHARE * accuracy * outcome.transmitted;
+/**
+ * Probability that rounding makes up behind a barrier: every step adds noise of relative amplitude eps at all wavenumbers, and what of it lies
+ * above the barrier's top gets through. Measured behind barriers of 0.4 to 3 eV that let nothing else pass: up to 1.7 eps^2 a step.
+ */
+function roundingFloor(steps: number): number {
+  return 8 * Number.EPSILON ** 2 * steps;
+}
+
+/** What may remain: its share of the error asked for, or what nobody could tell from rounding. */
+function tolerated(outcome: Outcome, accuracy: number, steps: number): number {
+  return Math.max(REMAINING_SHARE * accuracy * outcome.transmitted, roundingFloor(steps));
 }
 
 /** A plan with a later end when too much remained, unless the end is the user's or the work would grow past all measure. */
@@ -178,17 +187,17 @@ function prolonged(
   outcome: Outcome,
   accuracy: number,
 ): ClosedPlan | undefined {
-  if (design.numerics.end !== undefined || !tooMuchRemains(outcome, accuracy)) return undefined;
-  const next = planClosed(design, plan.end * prolongation(outcome, accuracy));
+  if (design.numerics.end !== undefined || !(outcome.unfinished > tolerated(outcome, accuracy, plan.steps)))
+    return undefined;
+  const next = planClosed(design, plan.end * prolongation(outcome, tolerated(outcome, accuracy, plan.steps)));
   const points = alignedPoints(next.stretches, REFINEMENTS[0]);
   return points > POINTS_LIMIT || points * next.steps > WORK_LIMIT / 4 ? undefined : next;
 }
 
 /** Factor on the end that should do if what is inside goes on decaying as it did over the last tenth of the time. */
-function prolongation(outcome: Outcome, accuracy: number): number {
+function prolongation(outcome: Outcome, limit: number): number {
   const rate = Math.log(outcome.insideBefore / outcome.inside) / LAST_PART;
-  const excess = outcome.unfinished / (REMAINING_SHARE * accuracy * outcome.transmitted);
-  const factor = 1.1 + Math.log(excess) / rate;
+  const factor = 1.1 + Math.log(outcome.unfinished / limit) / rate;
   return rate > 0 ? Math.min(MOST_PROLONGATION, Math.max(LEAST_PROLONGATION, factor)) : MOST_PROLONGATION;
 }
 
@@ -200,9 +209,9 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
   const drift = Math.max(...outcomes.map((o) => o.outcome.drift));
   // Each calculation carries the drift of its norm as a relative error; the extrapolation adds them with weights below 30.
   const rounding = Math.min(1, 30 * (drift + Number.EPSILON * Math.sqrt(plan.steps)));
-  const value = Math.max(0, t.value);
-  const reflected = Math.max(0, r.value);
-  const roundOff = value * rounding;
+  const value = Math.min(1, Math.max(0, t.value));
+  const reflected = Math.min(1, Math.max(0, r.value));
+  const roundOff = value * rounding + roundingFloor(plan.steps);
   const remaining = outcome.unfinished;
   const start = startError(plan.from, value);
   const widest = plan.stretches.reduce((h, s) => Math.max(h, (s.to - s.from) / s.cells), 0) / refinement;

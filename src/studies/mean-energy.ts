@@ -24,8 +24,10 @@ export function boundedAtMean(
   const missing = Math.sqrt(
     ((outcome.unfinished + beyondFace(from)) * Math.max(length, from.packet.width)) / (2 * Math.PI * density),
   );
-  const amplitude = Math.sqrt(Math.max(0, value));
-  return { value, error: extrapolationError + missing * (2 * amplitude + missing) };
+  // The truth lies between 0 and 1: a value beyond is moved towards it.
+  const probability = Math.min(1, Math.max(0, value));
+  const amplitude = Math.sqrt(probability);
+  return { value: probability, error: extrapolationError + missing * (2 * amplitude + missing) };
 }
 
 /**
