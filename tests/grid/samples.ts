@@ -30,8 +30,3 @@ export function designOf(
     numerics,
   };
 }
-
-/** The layers seen in a mirror: their order and every width reversed. */
-export function mirrored(layers: readonly Record<string, number>[]): Record<string, number>[] {
-  return [...layers].reverse();
-}
