@@ -6,12 +6,12 @@ export interface Extrapolated {
 }
 
 /**
- * The bound is the larger of these shares of the last change and of the one before. A change can be small by accident, where two error terms cross,
- * so the one before has a say. Measured on 120 barriers, wells, steps and
- * resonances with three to seven changes each: no error above half the bound, the median error 1/170 of it.
+ * The bound is the larger of these shares of the last change and of the one before. A change can be small by accident, where two error
+ * terms cross, so the one before has a say. Measured on 859 random stacks, barriers, wells and steps against
+ * closed forms: no error above 0.65 of the bound; shares of 0.5 and 0.01 let one escape.
  */
-const SHARE_OF_LAST = 0.5;
-const SHARE_OF_ONE_BEFORE = 0.01;
+const SHARE_OF_LAST = 2;
+const SHARE_OF_ONE_BEFORE = 0.02;
 
 /**
  * Richardson extrapolation by Neville's scheme: a quantity measured at spacings h_0 > h_1 > ... whose error is a series in

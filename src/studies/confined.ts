@@ -5,6 +5,7 @@ import type { Departure } from "../grid/journey.js";
 import { kineticEnergy, wavenumberOf, wavenumberSpread } from "../packets/gaussian.js";
 import type { Design } from "../problem/design.js";
 import { HBAR } from "../units/constants.js";
+import { DesignLimitError } from "./limits.js";
 
 /** Decay lengths beyond the turning points of the fastest component at which the box ends. */
 const DECAY_LENGTHS = 10;
@@ -18,12 +19,18 @@ export interface ConfinedMotion {
   readonly from: Departure;
   readonly end: number;
   readonly stretches: readonly Stretch[];
-  circle(points?: number): Circle;
+  /** The circle of so many points (raised to a power of two), or of at most this spacing, or an automatic one. */
+  circle(points?: number, step?: number): Circle;
 }
 
 /** The packet starts at `packet.start`, or in the middle; the box reaches beyond where its fastest component turns. */
 export function confinedMotion(design: Design): ConfinedMotion {
-  const { potential, packet, particleMass: mass } = design;
+  const { potential, packet, numerics, particleMass: mass } = design;
+  if (numerics.length !== undefined)
+    throw new DesignLimitError(
+      "numerics.length",
+      "where the potential confines the packet it sets the length itself; leave this out",
+    );
   const direction = packet.from === "left" ? 1 : -1;
   const center = packet.start ?? lowestPlace(design);
   const k0 = wavenumberOf(packet.energy, mass);
@@ -59,13 +66,15 @@ export function confinedMotion(design: Design): ConfinedMotion {
       ROUND_TRIPS *
       roundTrip(
         design,
-        Math.max(energy, potential.lowest + 0.5 * (highest - potential.lowest) * 1e-3),
+        // A packet at rest at the bottom has no round trip of its own: that of its fast parts stands for it.
+        energy > potential.lowest ? energy : highest,
         left,
         right,
       ),
     stretches: [{ from: left, to: right, cells }],
-    circle: (points) => {
-      const n = 2 ** Math.ceil(Math.log2(points ?? 2 * cells));
+    circle: (points, step) => {
+      const wanted = points ?? (step === undefined ? 2 * cells : (right - left) / step);
+      const n = 2 ** Math.max(4, Math.ceil(Math.log2(wanted)));
       return { first: left, step: (right - left) / n, points: n };
     },
   };

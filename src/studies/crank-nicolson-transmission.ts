@@ -1,26 +1,10 @@
-import {
-  alignedGrid,
-  alignedPoints,
-  alignedStretches,
-  forcedStretches,
-  type Stretch,
-} from "../grid/aligned.js";
-import {
-  type CayleyClock,
-  cayleyClock,
-  type Departure,
-  departure,
-  passage,
-  type Room,
-  roomFor,
-} from "../grid/journey.js";
+import { alignedGrid, alignedPoints } from "../grid/aligned.js";
 import { Extrapolation } from "../numerics/extrapolation.js";
 import type { Design } from "../problem/design.js";
 import { crankNicolson } from "../steppers/crank-nicolson.js";
-import { HBAR } from "../units/constants.js";
 import { atMost, type Calculation, type RunSummary, type StudyOptions } from "./calculation.js";
+import { type ClosedPlan, extent, planClosed } from "./closed-plan.js";
 import { commonChecks, relativeError, startError, structureLength } from "./common-checks.js";
-import { forcedRoom } from "./forced.js";
 import { BRING_CLOSER, POINTS_LIMIT, refuseTooLarge } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { LAST_PART, type Outcome, runToEnd } from "./outcome.js";
@@ -38,53 +22,6 @@ const LEAST_PROLONGATION = 1.2;
 const MOST_PROLONGATION = 2.5;
 /** Work (nodes times steps) after which the end is no longer moved out and the grid no longer refined. */
 const WORK_LIMIT = 1e9;
-
-/** All that is fixed before the first step. */
-export interface ClosedPlan {
-  readonly from: Departure;
-  readonly clock: CayleyClock;
-  readonly timeStep: number;
-  readonly order: number;
-  readonly end: number;
-  readonly steps: number;
-  readonly room: Room;
-  readonly stretches: readonly Stretch[];
-  /** True for a grid that the user asked for, which is taken once and not refined. */
-  readonly forced: boolean;
-}
-
-/**
- * Plans the Crank-Nicolson calculation that ends at `end` (fs; automatic when undefined). The time step is that of the clock with
- * least work (see `cayleyClock`): the transmission does not depend on it; the room needed and the number of steps do.
- */
-export function planClosed(design: Design, end?: number): ClosedPlan {
-  const { numerics, potential } = design;
-  const from = departure(design);
-  const automatic = cayleyClock(from);
-  const clock: CayleyClock =
-    numerics.timeStep === undefined
-      ? automatic
-      : { kind: "cayley", reference: from.energy, cutoff: (2 * HBAR) / numerics.timeStep };
-  const timeStep = (2 * HBAR) / clock.cutoff;
-  const reach = from.distance + structureLength(potential) + 6 * design.packet.width;
-  const wanted = numerics.end ?? end ?? passage(from, reach, clock);
-  const steps = Math.max(10, Math.ceil(wanted / timeStep));
-  const actual = steps * timeStep;
-  const room = forcedRoom(design, from, roomFor(from, actual, clock, "closed"));
-  const unforced = alignedStretches(potential, from, room);
-  const step = forcedStep(design, room);
-  const stretches = step === undefined ? unforced : forcedStretches(unforced, step);
-  const order = numerics.order ?? crankNicolson.defaultOrder;
-  return { from, clock, timeStep, order, end: actual, steps, room, stretches, forced: step !== undefined };
-}
-
-function forcedStep(design: Design, room: Room): number | undefined {
-  const { step, points } = design.numerics;
-  if (step !== undefined) return step;
-  return points === undefined
-    ? undefined
-    : (room.near + room.far + structureLength(design.potential)) / (points - 1);
-}
 
 /**
  * Transmission by Crank-Nicolson: whole calculations on grids refined in proportion, extrapolated to vanishing
@@ -180,14 +117,20 @@ function tolerated(outcome: Outcome, accuracy: number, steps: number): number {
   return Math.max(REMAINING_SHARE * accuracy * outcome.transmitted, roundingFloor(steps));
 }
 
-/** A plan with a later end when too much remained, unless the end is the user's or the work would grow past all measure. */
+/** A plan with a later end when too much remained, unless the end or the box is the user's or the work would grow past all measure. */
 function prolonged(
   design: Design,
   plan: ClosedPlan,
   outcome: Outcome,
   accuracy: number,
 ): ClosedPlan | undefined {
-  if (design.numerics.end !== undefined || !(outcome.unfinished > tolerated(outcome, accuracy, plan.steps)))
+  const { end, length } = design.numerics;
+  // In a box of the user's own length a later end would only let more come back from its ends.
+  if (
+    end !== undefined ||
+    length !== undefined ||
+    !(outcome.unfinished > tolerated(outcome, accuracy, plan.steps))
+  )
     return undefined;
   const next = planClosed(design, plan.end * prolongation(outcome, tolerated(outcome, accuracy, plan.steps)));
   const points = alignedPoints(next.stretches, REFINEMENTS[0]);
@@ -214,10 +157,7 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
   const roundOff = value * rounding + roundingFloor(plan.steps);
   const remaining = outcome.unfinished;
   const start = startError(plan.from, value);
-  const widest = plan.stretches.reduce((h, s) => Math.max(h, (s.to - s.from) / s.cells), 0) / refinement;
-  const finest =
-    plan.stretches.reduce((h, s) => Math.min(h, (s.to - s.from) / s.cells), Infinity) / refinement;
-  const ends = plan.stretches;
+  const { widest, finest, length } = extent(plan, refinement);
   return {
     stepper: crankNicolson.name,
     order: plan.order,
@@ -232,7 +172,7 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
       points: alignedPoints(plan.stretches, refinement),
       step_nm: widest,
       finest_nm: finest,
-      length_nm: ends[ends.length - 1].to - ends[0].from,
+      length_nm: length,
     },
     time: { step_fs: plan.timeStep, end_fs: plan.end, steps: plan.steps },
     parts: { spacing: Math.min(1, t.error), timeStep: 0, remaining, start, roundOff },

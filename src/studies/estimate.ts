@@ -10,6 +10,7 @@ import { crankNicolsonTransmission } from "./crank-nicolson-transmission.js";
 import { isForced } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
 import { splitOperatorTransmission } from "./split-operator-transmission.js";
+import { tailNote, warningsFor } from "./warnings.js";
 
 /** The answer to a design: probabilities with bounds, and what the verdict rests on. */
 export interface Estimate extends Calculation {
@@ -105,6 +106,8 @@ function judged(design: Design, calculation: Calculation, accuracy: number): Est
     backward: from.backward,
     checks,
     verdict: checks.every((check) => check.passed) ? "trusted" : "doubtful",
-    notes: [],
+    notes: [...warningsFor(design, from), tailNote(from, calculation.carryingEnergy)].filter(
+      (note) => note !== undefined,
+    ),
   };
 }

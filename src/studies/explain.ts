@@ -1,15 +1,15 @@
 import { alignedPoints } from "../grid/aligned.js";
-import { type Departure, departure } from "../grid/journey.js";
+import type { Departure } from "../grid/journey.js";
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
 import { stepperNamed } from "../steppers/registry.js";
 import { splitOperator } from "../steppers/split-operator.js";
 import { chooseStepper } from "./choose-stepper.js";
-import { amplitudeAtFace, beyondFace, CLEAR_AMPLITUDE } from "./common-checks.js";
-import { planClosed, REFINEMENTS } from "./crank-nicolson-transmission.js";
-import { isForced } from "./forced.js";
+import { planCircle } from "./circle-plan.js";
+import { extent, planClosed } from "./closed-plan.js";
+import { REFINEMENTS } from "./crank-nicolson-transmission.js";
 import { DesignLimitError } from "./limits.js";
 import { prepare } from "./prepare.js";
-import { planCircle } from "./split-operator-transmission.js";
+import { warningsFor } from "./warnings.js";
 
 /** One choice of the grid builder with its reason. `unit` is "nm", "fs", "1/nm", "eV" or "" . */
 export interface Choice {
@@ -24,13 +24,6 @@ export interface Explanation {
   readonly warnings: readonly string[];
 }
 
-/** Share of the packet that moves away from the structure from the start, above which it is worth a warning. */
-const BACKWARD_LIMIT = 1e-6;
-/** Spread of the energy relative to its mean above which the mean says little. */
-const BROAD = 0.25;
-/** Probability beyond the face from the start above which it is worth a warning. */
-const BEYOND_LIMIT = 1e-12;
-
 /**
  * Every numeric choice of an estimate with its reason, and what would be warned about; computes no transmission.
  * The end and the number of refinements are where the calculation starts from: it moves them out while too much remains or the bound is too wide.
@@ -42,9 +35,10 @@ export function explainPlan(design: Design): Explanation {
   const name = chooseStepper(design, accuracy);
   const refusal = stepperNamed(name)?.refusal(potential);
   if (refusal) throw new DesignLimitError("numerics.stepper", refusal);
-  const from = departure(design);
-  const choices = [stepperChoice(design, name), ...packetChoices(design, from)];
-  choices.push(...(name === splitOperator.name ? circleChoices(design, accuracy) : closedChoices(design)));
+  const spectral = name === splitOperator.name;
+  const { from } = spectral ? planCircle(design, accuracy) : planClosed(design);
+  const numeric = spectral ? circleChoices(design, accuracy) : closedChoices(design);
+  const choices = [stepperChoice(design, name), ...packetChoices(design, from), ...numeric];
   return { choices, warnings: warningsFor(design, from) };
 }
 
@@ -90,12 +84,7 @@ function closedChoices(design: Design): Choice[] {
   const plan = planClosed(design);
   const { numerics } = design;
   const [a, b] = plan.forced ? [1, 1] : [REFINEMENTS[0], REFINEMENTS[4]];
-  const widest = plan.stretches.reduce((h, s) => Math.max(h, (s.to - s.from) / s.cells), 0);
-  const finest = plan.stretches.reduce(
-    (h, s) => Math.min(h, (s.to - s.from) / s.cells),
-    Number.POSITIVE_INFINITY,
-  );
-  const length = plan.stretches[plan.stretches.length - 1].to - plan.stretches[0].from;
+  const { widest, finest, length } = extent(plan, 1);
   const spacingWhy = plan.forced
     ? "as the design asks: one calculation on this grid, its error measured against an automatic one"
     : "a fixed share of the local wavelength or decay length, stretch by stretch; refined together until the extrapolation is within the accuracy";
@@ -240,39 +229,4 @@ function explainConfined(design: Design): Explanation {
       `The ${design.potential.shape} potential confines the particle, so nothing is transmitted: use "postern map", not estimate.`,
     ],
   };
-}
-
-function warningsFor(design: Design, from: Departure): string[] {
-  const warnings: string[] = [];
-  const { packet, numerics, potential } = design;
-  const relative = (2 * from.spread) / from.k0;
-  if (relative > BROAD)
-    warnings.push(
-      `The packet's energies spread by ${Math.round(100 * relative)} % of their mean: its transmission is an average over them, not that of the mean energy.`,
-    );
-  if (from.backward > BACKWARD_LIMIT)
-    warnings.push(
-      `A share of ${from.backward.toPrecision(1)} of the packet moves away from the structure from the start and counts as reflected.`,
-    );
-  const atFace = amplitudeAtFace(from);
-  if (atFace > CLEAR_AMPLITUDE)
-    warnings.push(
-      `The packet does not start clear of the structure: its amplitude at the face is ${atFace.toPrecision(1)} of its peak. Start it ${(10 * packet.width).toPrecision(3)} nm away or more.`,
-    );
-  const beyond = beyondFace(from);
-  if (beyond > BEYOND_LIMIT)
-    warnings.push(
-      `A probability of ${beyond.toPrecision(1)} lies beyond the structure's face from the start.`,
-    );
-  if (isForced(numerics))
-    warnings.push("Numerics are forced: the bound is measured against an automatic calculation.");
-  if (
-    from.highest < potential.highest &&
-    potential.highest > 4 * from.energy &&
-    numerics.stepper === splitOperator.name
-  )
-    warnings.push(
-      "Behind a barrier this high the transmission may lie below the rounding of a Fourier transform; crank-nicolson keeps small amplitudes right.",
-    );
-  return warnings;
 }

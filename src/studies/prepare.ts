@@ -10,11 +10,11 @@ import { splitOperator } from "../steppers/split-operator.js";
 import type { Stepper } from "../steppers/stepper.js";
 import { HBAR } from "../units/constants.js";
 import { chooseStepper } from "./choose-stepper.js";
+import { largestDrift } from "./circle-plan.js";
 import { structureLength } from "./common-checks.js";
 import { type ConfinedMotion, confinedMotion } from "./confined.js";
 import { forcedRoom } from "./forced.js";
 import { BRING_CLOSER, DesignLimitError, refuseTooLarge } from "./limits.js";
-import { largestDrift } from "./split-operator-transmission.js";
 
 /** Order of the Crank-Nicolson step where the time itself must be right. */
 const TRUE_TIME_ORDER = 6;
@@ -122,7 +122,7 @@ function splitRun(
   const { potential, numerics, particleMass } = design;
   const spacing = numerics.step ?? firstSpacing(potential, from) / 2;
   const whole =
-    motion?.circle(numerics.points) ??
+    motion?.circle(numerics.points, numerics.step) ??
     circleFor(potential, from, room(design, from, end), spacing, {
       points: numerics.points,
       keepStep: numerics.step !== undefined && numerics.length === undefined,

@@ -1,165 +1,19 @@
-import {
-  type Circle,
-  circleFor,
-  circleGrid,
-  firstSpacing,
-  largestTimeStep,
-  refined,
-} from "../grid/circle.js";
-import { type Departure, departure, passage, roomFor } from "../grid/journey.js";
+import { type Circle, largestTimeStep, refined } from "../grid/circle.js";
 import type { Design } from "../problem/design.js";
 import { splitOperator } from "../steppers/split-operator.js";
-import { splittingOfOrder } from "../steppers/splittings.js";
-import { HBAR } from "../units/constants.js";
-import { atMost, type Calculation, type Check, type RunSummary, type StudyOptions } from "./calculation.js";
+import { atMost, type Calculation, type Check, type StudyOptions } from "./calculation.js";
+import { Calculations } from "./circle-calculations.js";
+import { type CirclePlan, largestDrift, planCircle } from "./circle-plan.js";
 import { commonChecks, relativeError, startError, structureLength } from "./common-checks.js";
-import { forcedRoom } from "./forced.js";
-import { refuseTooLarge } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
-import { type Outcome, runToEnd } from "./outcome.js";
+import type { Outcome } from "./outcome.js";
 
-/**
- * Order taken unless asked otherwise: least work to that accuracy on the sech2 barrier of check-values 5.2. Where V has jumps the kinetic phase
- * limits the step, not the order.
- */
-const orderFor = (jumps: boolean, accuracy: number): number => (jumps ? 2 : accuracy < 1e-8 ? 6 : 4);
-/**
- * First time step in units of 1/rate (see `fastestRate`) for the accuracy beside it; the error falls with the order's power.
- * Tuned so that one halving suffices on the sech2 barrier of check-values 3.6.
- */
-const FIRST_TIME_PHASE: Readonly<Record<number, { readonly phase: number; readonly accuracy: number }>> = {
-  2: { phase: 0.1, accuracy: 1e-6 },
-  4: { phase: 1.6, accuracy: 1e-6 },
-  6: { phase: 0.7, accuracy: 1e-10 },
-};
 /** Share of the change on halving the step that the extrapolated value is believed within, by order: over twice what was seen on check-values 3.6. */
 const TIME_CAUTION: Readonly<Record<number, number>> = { 2: 0.5, 4: 0.15, 6: 0.06 };
 const REMAINING_SHARE = 0.1;
 const PROLONGATION = 1.4;
-/** Start of the packet in its own widths from the structure; a transform's rounding hides what is smaller than this leaves. */
-const CLEARANCE = 10;
 /** Work (points times transforms) after which nothing is refined or prolonged any more. */
 const WORK_LIMIT = 8e8;
-/** Points beyond which a circle is refused: its tables grow with every halving of the spacing. */
-const CIRCLE_LIMIT = 2 ** 20;
-
-/** All that is fixed before the first step. */
-export interface CirclePlan {
-  readonly from: Departure;
-  readonly order: number;
-  readonly circle: Circle;
-  readonly timeStep: number;
-  readonly end: number;
-  readonly forcedSpace: boolean;
-  readonly forcedTime: boolean;
-}
-
-const exact = { kind: "exact" } as const;
-
-/** Largest |a| of the drifts of the splitting of an order. */
-export function largestDrift(order: number): number {
-  return Math.max(...(splittingOfOrder(order)?.a ?? [1]).map(Math.abs));
-}
-
-/** Plans the calculation on a circle that ends at `end` (fs; automatic when undefined). */
-export function planCircle(design: Design, accuracy: number, end?: number): CirclePlan {
-  const { numerics, potential, packet } = design;
-  const from = departure(design, CLEARANCE);
-  const order = numerics.order ?? orderFor(potential.slopeTransform !== undefined, accuracy);
-  const reach = from.distance + structureLength(potential) + 6 * packet.width;
-  const wanted = numerics.end ?? end ?? passage(from, reach, exact);
-  const room = forcedRoom(design, from, roomFor(from, wanted, exact, "untouched"));
-  const circle = circleFor(potential, from, room, numerics.step ?? firstSpacing(potential, from), {
-    points: numerics.points,
-    keepStep: numerics.step !== undefined && numerics.length === undefined,
-    tight: numerics.length !== undefined,
-  });
-  const timeStep = numerics.timeStep ?? firstTimeStep(order, accuracy, fastestRate(design, from));
-  refuseTooLarge(design, circle.points, Math.ceil(wanted / timeStep), "use crank-nicolson", CIRCLE_LIMIT);
-  return {
-    from,
-    order,
-    circle,
-    timeStep: wanted / Math.ceil(wanted / timeStep),
-    end: wanted,
-    forcedSpace: numerics.step !== undefined || numerics.points !== undefined,
-    forcedTime: numerics.timeStep !== undefined,
-  };
-}
-
-function firstTimeStep(order: number, accuracy: number, rate: number): number {
-  const { phase, accuracy: tuned } = FIRST_TIME_PHASE[order] ?? FIRST_TIME_PHASE[2];
-  return (phase * Math.min(2, (accuracy / tuned) ** (1 / order))) / rate;
-}
-
-/** Rate (1/fs) at which a splitting is taxed: that of the kinetic energy in the structure and that of a swing in its curvature. */
-function fastestRate({ potential, particleMass }: Design, from: Departure): number {
-  const range = potential.highest - potential.lowest;
-  const energy = Math.max(from.highest - potential.lowest, range);
-  const swing = Number.isFinite(potential.scale)
-    ? Math.sqrt((2 * range) / particleMass) / potential.scale
-    : 0;
-  return energy / HBAR + swing;
-}
-
-/** Whole calculations on circles refined s times in space and t times in time, each done once. */
-class Calculations {
-  private readonly done = new Map<string, Outcome>();
-  /** Points times transforms spent so far. */
-  work = 0;
-
-  constructor(
-    private readonly design: Design,
-    private readonly plan: CirclePlan,
-    private readonly options: StudyOptions,
-  ) {}
-
-  cost(s: number, t: number): number {
-    const stages = splittingOfOrder(this.plan.order)?.a.length ?? 1;
-    return this.done.has(`${s} ${t}`) ? 0 : 2 * stages * this.steps(t) * this.plan.circle.points * 2 ** s;
-  }
-
-  steps(t: number): number {
-    return Math.max(1, Math.round(this.plan.end / this.plan.timeStep)) * 2 ** t;
-  }
-
-  async at(s: number, t: number): Promise<Outcome> {
-    const key = `${s} ${t}`;
-    const known = this.done.get(key);
-    if (known) return known;
-    const { plan, design, options } = this;
-    const circle = refined(plan.circle, s);
-    options.onProgress?.(`split operator, ${circle.points} points, ${this.steps(t)} steps`);
-    const system = {
-      grid: circleGrid(circle),
-      potential: design.potential,
-      particleMass: design.particleMass,
-    };
-    this.work += this.cost(s, t);
-    const stepper = splitOperator.prepare(system, plan.timeStep / 2 ** t, plan.order);
-    const outcome = await runToEnd(stepper, plan.from, this.steps(t), undefined, options);
-    this.done.set(key, outcome);
-    return outcome;
-  }
-
-  list(): RunSummary[] {
-    return [...this.done].map(([key, outcome]) => {
-      const [s, t] = key.split(" ").map(Number);
-      const circle = refined(this.plan.circle, s);
-      return {
-        points: circle.points,
-        step_nm: circle.step,
-        timeStep_fs: this.plan.timeStep / 2 ** t,
-        transmission: outcome.transmitted,
-      };
-    });
-  }
-
-  drift(): number {
-    return Math.max(...[...this.done.values()].map((outcome) => outcome.drift));
-  }
-}
-
 /** Where the refinement stands: levels in space and time, the outcome there, and what each axis still leaves. */
 interface Standing {
   readonly s: number;
@@ -307,13 +161,14 @@ function summary(
     8 * Number.EPSILON * Number.EPSILON * steps * circle.points +
     4 * Number.EPSILON * Math.sqrt(steps) * Math.sqrt(transmission);
   const start = startError(plan.from, transmission);
-  const error = spacing + time + outcome.unfinished + start + roundOff;
+  const others = spacing + time + outcome.unfinished + start;
   const value = (x: number) => Math.min(1, Math.max(0, x));
   return {
     stepper: splitOperator.name,
     order: plan.order,
-    transmission: { value: value(transmission), error },
-    reflection: { value: value(reflection), error },
+    transmission: { value: value(transmission), error: others + roundOff },
+    // Near one it carries the drift of the norm whole.
+    reflection: { value: value(reflection), error: others + roundOff + 4 * drift * value(reflection) },
     remaining: outcome.unfinished,
     normDrift: drift,
     grid: {

@@ -160,6 +160,14 @@ const CASES: readonly Case[] = [
     width: 20,
     from: "right",
   },
+  {
+    title: `sech2 far above its top, whose reflection is all that can be wrong (${LANDAU}, problem 4 [memory])`,
+    mass: 0.418,
+    potential: "{ shape: sech2, height: 0.271 eV, width: 2.53 nm }",
+    closed: sech2(0.271, 2.53),
+    energy: 0.463,
+    width: 20.6,
+  },
   { title: `sech2 well (${LANDAU}, problem 4 [memory])`, ...smoothWell, energy: 0.05, width: 15 },
   {
     title: "attracting delta (Griffiths, sec. 2.5 [memory])",

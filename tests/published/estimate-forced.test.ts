@@ -32,6 +32,7 @@ const WRONG = [
 const HARMLESS = [
   `${BY_CRANK}, timeStep: 0.5 fs`,
   `${BY_CRANK}, order: 4`,
+  `${BY_CRANK}, order: 6`,
   `${BY_CRANK}, end: 2 ps`,
   `${BY_CRANK}, length: 1.5 um`,
 ];

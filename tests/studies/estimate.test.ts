@@ -2,7 +2,7 @@ import { describe, expect, it } from "vitest";
 import { alignedGrid } from "../../src/grid/aligned.js";
 import type { Numerics } from "../../src/problem/design.js";
 import { crankNicolson } from "../../src/steppers/crank-nicolson.js";
-import { planClosed } from "../../src/studies/crank-nicolson-transmission.js";
+import { planClosed } from "../../src/studies/closed-plan.js";
 import { estimate } from "../../src/studies/estimate.js";
 import { DesignLimitError } from "../../src/studies/limits.js";
 import { runToEnd } from "../../src/studies/outcome.js";

@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import type { Numerics } from "../../src/problem/design.js";
-import { planClosed } from "../../src/studies/crank-nicolson-transmission.js";
+import { planClosed } from "../../src/studies/closed-plan.js";
 import { explainPlan } from "../../src/studies/explain.js";
 import { designOf, potentialOf } from "../grid/samples.js";
 

@@ -1,0 +1,86 @@
+import { type Circle, circleFor, firstSpacing } from "../grid/circle.js";
+import { type Departure, departure, passage, roomFor } from "../grid/journey.js";
+import type { Design } from "../problem/design.js";
+import { splittingOfOrder } from "../steppers/splittings.js";
+import { HBAR } from "../units/constants.js";
+import { structureLength } from "./common-checks.js";
+import { forcedRoom } from "./forced.js";
+import { refuseTooLarge } from "./limits.js";
+
+/**
+ * Order taken unless asked otherwise: least work to that accuracy on the sech2 barrier of check-values 5.2. Where V has jumps the kinetic phase
+ * limits the step, not the order.
+ */
+const orderFor = (jumps: boolean, accuracy: number): number => (jumps ? 2 : accuracy < 1e-8 ? 6 : 4);
+/**
+ * First time step in units of 1/rate (see `fastestRate`) for the accuracy beside it; the error falls with the order's power.
+ * Tuned so that one halving suffices on the sech2 barrier of check-values 3.6.
+ */
+const FIRST_TIME_PHASE: Readonly<Record<number, { readonly phase: number; readonly accuracy: number }>> = {
+  2: { phase: 0.1, accuracy: 1e-6 },
+  4: { phase: 1.6, accuracy: 1e-6 },
+  6: { phase: 0.7, accuracy: 1e-10 },
+};
+/** Start of the packet in its own widths from the structure; a transform's rounding hides what is smaller than this leaves. */
+const CLEARANCE = 10;
+/** Points beyond which a circle is refused: its tables grow with every halving of the spacing. */
+const CIRCLE_LIMIT = 2 ** 20;
+
+/** All that is fixed before the first step. */
+export interface CirclePlan {
+  readonly from: Departure;
+  readonly order: number;
+  readonly circle: Circle;
+  readonly timeStep: number;
+  readonly end: number;
+  readonly forcedSpace: boolean;
+  readonly forcedTime: boolean;
+}
+
+const exact = { kind: "exact" } as const;
+
+/** Largest |a| of the drifts of the splitting of an order. */
+export function largestDrift(order: number): number {
+  return Math.max(...(splittingOfOrder(order)?.a ?? [1]).map(Math.abs));
+}
+
+/** Plans the calculation on a circle that ends at `end` (fs; automatic when undefined). */
+export function planCircle(design: Design, accuracy: number, end?: number): CirclePlan {
+  const { numerics, potential, packet } = design;
+  const from = departure(design, CLEARANCE);
+  const order = numerics.order ?? orderFor(potential.slopeTransform !== undefined, accuracy);
+  const reach = from.distance + structureLength(potential) + 6 * packet.width;
+  const wanted = numerics.end ?? end ?? passage(from, reach, exact);
+  const room = forcedRoom(design, from, roomFor(from, wanted, exact, "untouched"));
+  const circle = circleFor(potential, from, room, numerics.step ?? firstSpacing(potential, from), {
+    points: numerics.points,
+    keepStep: numerics.step !== undefined && numerics.length === undefined,
+    tight: numerics.length !== undefined,
+  });
+  const timeStep = numerics.timeStep ?? firstTimeStep(order, accuracy, fastestRate(design, from));
+  refuseTooLarge(design, circle.points, Math.ceil(wanted / timeStep), "use crank-nicolson", CIRCLE_LIMIT);
+  return {
+    from,
+    order,
+    circle,
+    timeStep: wanted / Math.ceil(wanted / timeStep),
+    end: wanted,
+    forcedSpace: numerics.step !== undefined || numerics.points !== undefined,
+    forcedTime: numerics.timeStep !== undefined,
+  };
+}
+
+function firstTimeStep(order: number, accuracy: number, rate: number): number {
+  const { phase, accuracy: tuned } = FIRST_TIME_PHASE[order] ?? FIRST_TIME_PHASE[2];
+  return (phase * Math.min(2, (accuracy / tuned) ** (1 / order))) / rate;
+}
+
+/** Rate (1/fs) at which a splitting is taxed: that of the kinetic energy in the structure and that of a swing in its curvature. */
+function fastestRate({ potential, particleMass }: Design, from: Departure): number {
+  const range = potential.highest - potential.lowest;
+  const energy = Math.max(from.highest - potential.lowest, range);
+  const swing = Number.isFinite(potential.scale)
+    ? Math.sqrt((2 * range) / particleMass) / potential.scale
+    : 0;
+  return energy / HBAR + swing;
+}
