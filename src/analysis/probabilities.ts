@@ -74,3 +74,31 @@ export function norm(psi: Float64Array, weight: Float64Array, from = 0, to = wei
     sum += weight[j] * (psi[2 * j] * psi[2 * j] + psi[2 * j + 1] * psi[2 * j + 1]);
   return sum;
 }
+
+/** Factor by which the density must have risen over its least value before a tail is taken to have ended. */
+const TAIL_END = 4;
+
+/**
+ * Probability beside the structure that belongs to what is held in it: the tails that fall outward from the faces on either side, each up to
+ * where the density has risen again to TAIL_END times its least value. A bound state shallow against its well has most of itself there;
+ * what leaves the structure has its greatest density further out, so that nothing of it is counted. Cost O(length of the tails).
+ */
+export function tails(
+  psi: Float64Array,
+  grid: Grid,
+  { first, end, seam }: Division,
+): { left: number; right: number } {
+  return { left: tail(psi, grid.weight, first - 1, -1, -1), right: tail(psi, grid.weight, end, 1, seam) };
+}
+
+function tail(psi: Float64Array, weight: Float64Array, from: number, step: 1 | -1, stop: number): number {
+  let sum = 0;
+  let least = Number.POSITIVE_INFINITY;
+  for (let j = from; j !== stop; j += step) {
+    const density = psi[2 * j] ** 2 + psi[2 * j + 1] ** 2;
+    if (density > TAIL_END * least) return sum;
+    least = Math.min(least, density);
+    sum += weight[j] * density;
+  }
+  return sum;
+}

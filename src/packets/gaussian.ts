@@ -44,6 +44,12 @@ export function sampleGaussian(out: Float64Array, x: Float64Array, packet: Gauss
   for (let j = 0; j < x.length; j++) {
     const s = x[j] - center;
     const envelope = peak * Math.exp((-s * s) / (4 * width * width));
+    // Most of a long box lies where the envelope has underflowed.
+    if (envelope === 0) {
+      out[2 * j] = 0;
+      out[2 * j + 1] = 0;
+      continue;
+    }
     out[2 * j] = envelope * Math.cos(wavenumber * s);
     out[2 * j + 1] = envelope * Math.sin(wavenumber * s);
   }

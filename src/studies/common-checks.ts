@@ -48,6 +48,7 @@ export function commonChecks(
   drift: number,
   accuracy: number,
   transmitted: number,
+  held = false,
 ): Check[] {
   return [
     atMost(
@@ -62,7 +63,9 @@ export function commonChecks(
       "remaining",
       relativeError(outcome.unfinished, transmitted),
       accuracy,
-      "what is still inside or still to arrive at the end, relative to what got through",
+      held
+        ? "a part of the packet is held in the structure (bound, or for longer than can be waited for); relative to what got through"
+        : "what is still inside or still to arrive at the end, relative to what got through",
     ),
   ];
 }

@@ -10,16 +10,24 @@ import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { LAST_PART, type Outcome, runToEnd } from "./outcome.js";
 
 /** Cells of the successive calculations in units of the unrefined grid's. Tuned for least work to 1e-6 on check-values 3.6. */
-export const REFINEMENTS = [1, 2, 3, 4, 6, 8, 12, 16, 24, 32];
+export const REFINEMENTS = [1, 2, 3, 4, 5, 6, 8, 10, 12, 16, 20, 24, 32];
 /** Calculations before the bound is believed. */
 const FEWEST_CALCULATIONS = 4;
 /** Share of the error asked for that the spacing may take, ... */
 const SPACING_SHARE = 0.7;
 /** ... and that what remains may take. */
 const REMAINING_SHARE = 0.2;
+/** A refined grid may show so much more than the unrefined one before the end is moved out once more: the shares leave room for it. */
+const SLACK = 1.3;
 /** The end is moved out by a factor between these while too much remains. */
 const LEAST_PROLONGATION = 1.2;
 const MOST_PROLONGATION = 2.5;
+/**
+ * What is inside counts as held (bound, or for some thirty times longer than the calculation so far) when so much of it is left after the
+ * end was moved out by at least this factor.
+ */
+const HELD_SHARE = 0.95;
+const HELD_FACTOR = 1.8;
 /** Work (nodes times steps) after which the end is no longer moved out and the grid no longer refined. */
 const WORK_LIMIT = 1e9;
 
@@ -33,14 +41,21 @@ export async function crankNicolsonTransmission(
   options: StudyOptions,
 ): Promise<Calculation> {
   let plan = planClosed(design);
+  let before: { inside: number; end: number } | undefined;
   for (;;) {
     // The unrefined grid tells, at a fraction of the cost, whether the end is late enough.
     const pilot = await outcomeOn(plan, design, REFINEMENTS[0], options);
-    let next = prolonged(design, plan, pilot, accuracy);
+    const held =
+      before !== undefined &&
+      plan.end > HELD_FACTOR * before.end &&
+      pilot.inside > HELD_SHARE * before.inside;
+    before = { inside: pilot.inside, end: plan.end };
+    let next = held ? undefined : prolonged(design, plan, pilot, accuracy, 1);
     if (next === undefined) {
-      const attempt = await attemptAt(plan, design, pilot, accuracy, options);
-      next = prolonged(design, plan, attempt.outcomes[attempt.outcomes.length - 1].outcome, accuracy);
-      if (next === undefined) return summary(design, plan, attempt, accuracy);
+      const attempt = await attemptAt(plan, design, pilot, accuracy, held, options);
+      const last = attempt.outcomes[attempt.outcomes.length - 1].outcome;
+      next = held ? undefined : prolonged(design, plan, last, accuracy, SLACK);
+      if (next === undefined) return summary(design, plan, attempt, accuracy, held);
     }
     plan = next;
   }
@@ -79,6 +94,7 @@ async function attemptAt(
   design: Design,
   pilot: Outcome,
   accuracy: number,
+  held: boolean,
   options: StudyOptions,
 ): Promise<Attempt> {
   const transmission = new Extrapolation();
@@ -96,7 +112,7 @@ async function attemptAt(
     const t = transmission.add(1 / refinement, outcome.transmitted);
     reflection.add(1 / refinement, outcome.reflected);
     atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
-    if (prolonged(design, plan, outcome, accuracy)) break;
+    if (!held && prolonged(design, plan, outcome, accuracy, SLACK)) break;
     // Where too much remains for good, the grid need not be better than that.
     const goal = SPACING_SHARE * Math.max(accuracy * t.value, outcome.unfinished, roundingFloor(plan.steps));
     if (t.error <= goal && outcomes.length >= FEWEST_CALCULATIONS) break;
@@ -123,16 +139,13 @@ function prolonged(
   plan: ClosedPlan,
   outcome: Outcome,
   accuracy: number,
+  slack: number,
 ): ClosedPlan | undefined {
   const { end, length } = design.numerics;
-  // In a box of the user's own length a later end would only let more come back from its ends.
-  if (
-    end !== undefined ||
-    length !== undefined ||
-    !(outcome.unfinished > tolerated(outcome, accuracy, plan.steps))
-  )
-    return undefined;
-  const next = planClosed(design, plan.end * prolongation(outcome, tolerated(outcome, accuracy, plan.steps)));
+  const limit = tolerated(outcome, accuracy, plan.steps);
+  // In a box of the user's own length more would come back from its ends.
+  if (end !== undefined || length !== undefined || !(outcome.unfinished > slack * limit)) return undefined;
+  const next = planClosed(design, plan.end * prolongation(outcome, limit));
   const points = alignedPoints(next.stretches, REFINEMENTS[0]);
   return points > POINTS_LIMIT || points * next.steps > WORK_LIMIT / 4 ? undefined : next;
 }
@@ -144,7 +157,13 @@ function prolongation(outcome: Outcome, limit: number): number {
   return rate > 0 ? Math.min(MOST_PROLONGATION, Math.max(LEAST_PROLONGATION, factor)) : MOST_PROLONGATION;
 }
 
-function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: number): Calculation {
+function summary(
+  design: Design,
+  plan: ClosedPlan,
+  attempt: Attempt,
+  accuracy: number,
+  held: boolean,
+): Calculation {
   const { outcomes, transmission, reflection } = attempt;
   const { outcome, refinement } = outcomes[outcomes.length - 1];
   const t = transmission.result;
@@ -193,7 +212,7 @@ function summary(design: Design, plan: ClosedPlan, attempt: Attempt, accuracy: n
     ),
     carryingEnergy: carryingEnergy(outcome, plan.from, outcomes[Math.min(1, outcomes.length - 1)].outcome),
     checks: [
-      ...commonChecks(plan.from, outcome, drift, accuracy, value),
+      ...commonChecks(plan.from, outcome, drift, accuracy, value, held),
       atMost(
         "spacing",
         relativeError(t.error, t.value),

@@ -6,7 +6,7 @@ import { beyondFace } from "./common-checks.js";
 import type { Outcome } from "./outcome.js";
 
 /** Energies at which the distribution of what got through is surveyed, and those at which its peak is looked at more closely. */
-const SAMPLES = 300;
+const SAMPLES = 200;
 const CLOSE_SAMPLES = 12;
 
 /**
@@ -31,8 +31,8 @@ export function boundedAtMean(
 }
 
 /**
- * The total energy (eV) at which the energy distribution of what got through peaks. A resonance narrower than a three-hundredth of
- * the packet's range can be missed: it carries little. Cost: 300 projections of `survey`, which may be a coarse
+ * The total energy (eV) at which the energy distribution of what got through peaks. A resonance narrower than a two-hundredth of
+ * the packet's range can be missed: it carries little. Cost: 200 projections of `survey`, which may be a coarse
  * calculation, and 15 of `outcome`.
  */
 export function carryingEnergy(outcome: Outcome, from: Departure, survey: Outcome = outcome): number {

@@ -1,5 +1,5 @@
 import { gridWave, wallDensity, wavenumberDensity } from "../analysis/energy-spectrum.js";
-import { core, type Division, divide, norm, type Shares, shares } from "../analysis/probabilities.js";
+import { core, type Division, divide, norm, type Shares, shares, tails } from "../analysis/probabilities.js";
 import type { Grid } from "../grid/grid.js";
 import type { Departure } from "../grid/journey.js";
 import { type GaussianPacket, sampleGaussian, wavenumberWeight } from "../packets/gaussian.js";
@@ -14,7 +14,7 @@ export interface Outcome {
   readonly inside: number;
   /** `inside` when nine tenths of the time were over. */
   readonly insideBefore: number;
-  /** Bound on what is still to be added to `transmitted`: inside, and on its way. */
+  /** Bound on the error of `transmitted` that the end leaves: inside, in its tails beside the structure, and on its way. */
   readonly unfinished: number;
   /** Change of the norm over the whole calculation. */
   readonly drift: number;
@@ -64,6 +64,7 @@ export async function runToEnd(
     onProgress: options.onProgress && ((done, total) => options.onProgress?.("propagating", done / total)),
   });
   const parts = shares(psi, grid, division);
+  const beside = tails(psi, grid, division);
   const total = parts.left + parts.inside + parts.right;
   const transmitted = through(parts);
   return {
@@ -71,7 +72,8 @@ export async function runToEnd(
     reflected: (from.direction > 0 ? parts.left : parts.right) / total,
     inside: parts.inside / total,
     insideBefore: insideBefore / total,
-    unfinished: (parts.inside + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
+    unfinished:
+      (parts.inside + beside.left + beside.right + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
     drift: Math.abs(total - start) / start,
     sampling: Math.abs(start - 1),
     transmissionAt: (energy) => transmissionAt(energy, psi, stepper, from, packet, division),
