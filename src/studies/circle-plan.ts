@@ -44,6 +44,17 @@ export function largestDrift(order: number): number {
   return Math.max(...(splittingOfOrder(order)?.a ?? [1]).map(Math.abs));
 }
 
+/** The circle whose seam nothing reaches until `end` (fs), of at most this spacing (nm), unless the design forces one. */
+export function untouchedCircle(design: Design, from: Departure, end: number, spacing: number): Circle {
+  const { step, points, length } = design.numerics;
+  const room = forcedRoom(design, from, roomFor(from, end, exact, "untouched"));
+  return circleFor(design.potential, from, room, step ?? spacing, {
+    points,
+    keepStep: step !== undefined && length === undefined,
+    tight: length !== undefined,
+  });
+}
+
 /** Plans the calculation on a circle that ends at `end` (fs; automatic when undefined). */
 export function planCircle(design: Design, accuracy: number, end?: number): CirclePlan {
   const { numerics, potential, packet } = design;
@@ -51,12 +62,7 @@ export function planCircle(design: Design, accuracy: number, end?: number): Circ
   const order = numerics.order ?? orderFor(potential.slopeTransform !== undefined, accuracy);
   const reach = from.distance + structureLength(potential) + 6 * packet.width;
   const wanted = numerics.end ?? end ?? passage(from, reach, exact);
-  const room = forcedRoom(design, from, roomFor(from, wanted, exact, "untouched"));
-  const circle = circleFor(potential, from, room, numerics.step ?? firstSpacing(potential, from), {
-    points: numerics.points,
-    keepStep: numerics.step !== undefined && numerics.length === undefined,
-    tight: numerics.length !== undefined,
-  });
+  const circle = untouchedCircle(design, from, wanted, firstSpacing(potential, from));
   const timeStep = numerics.timeStep ?? firstTimeStep(order, accuracy, fastestRate(design, from));
   refuseTooLarge(design, circle.points, Math.ceil(wanted / timeStep), "use crank-nicolson", CIRCLE_LIMIT);
   return {

@@ -1,6 +1,6 @@
 import { alignedGrid, alignedPoints, alignedStretches, forcedStretches } from "../grid/aligned.js";
-import { circleFor, circleGrid, firstSpacing, largestTimeStep, refined } from "../grid/circle.js";
-import { type Departure, departure, passage, type Room, roomFor } from "../grid/journey.js";
+import { circleGrid, firstSpacing, largestTimeStep, refined } from "../grid/circle.js";
+import { type Departure, departure, passage, roomFor } from "../grid/journey.js";
 import { sampleGaussian } from "../packets/gaussian.js";
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
 import type { Run } from "../propagate.js";
@@ -10,7 +10,7 @@ import { splitOperator } from "../steppers/split-operator.js";
 import type { Stepper } from "../steppers/stepper.js";
 import { HBAR } from "../units/constants.js";
 import { chooseStepper } from "./choose-stepper.js";
-import { largestDrift } from "./circle-plan.js";
+import { largestDrift, untouchedCircle } from "./circle-plan.js";
 import { structureLength } from "./common-checks.js";
 import { type ConfinedMotion, confinedMotion } from "./confined.js";
 import { forcedRoom } from "./forced.js";
@@ -74,10 +74,6 @@ function automaticEnd(design: Design, from: Departure): number {
   return passage(from, reach, { kind: "exact" }, PASSED_SPREADS);
 }
 
-function room(design: Design, from: Departure, end: number): Room {
-  return forcedRoom(design, from, roomFor(from, end, { kind: "exact" }, "untouched"));
-}
-
 /** Time step that divides the end: as asked for, or at most `largest` and short enough for FEWEST_STEPS. */
 function timeStepFor(design: Design, end: number, largest: number, fineness = 1): number {
   const asked = design.numerics.timeStep;
@@ -94,7 +90,13 @@ function closedRun(
   options: PrepareOptions,
 ): Stepper {
   const { potential, numerics, particleMass } = design;
-  const stretches = motion?.stretches ?? alignedStretches(potential, from, room(design, from, end));
+  const stretches =
+    motion?.stretches ??
+    alignedStretches(
+      potential,
+      from,
+      forcedRoom(design, from, roomFor(from, end, { kind: "exact" }, "untouched")),
+    );
   const length = stretches[stretches.length - 1].to - stretches[0].from;
   const step = numerics.step ?? (numerics.points === undefined ? undefined : length / (numerics.points - 1));
   const fineness = options.fineness ?? 1;
@@ -120,14 +122,9 @@ function splitRun(
   options: PrepareOptions,
 ): Stepper {
   const { potential, numerics, particleMass } = design;
-  const spacing = numerics.step ?? firstSpacing(potential, from) / 2;
   const whole =
     motion?.circle(numerics.points, numerics.step) ??
-    circleFor(potential, from, room(design, from, end), spacing, {
-      points: numerics.points,
-      keepStep: numerics.step !== undefined && numerics.length === undefined,
-      tight: numerics.length !== undefined,
-    });
+    untouchedCircle(design, from, end, firstSpacing(potential, from) / 2);
   const circle = refined(whole, Math.round(Math.log2(options.fineness ?? 1)));
   const jumps = potential.slopeTransform !== undefined;
   const order = numerics.order ?? (jumps ? 2 : 6);
