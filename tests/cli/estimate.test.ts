@@ -19,6 +19,7 @@ function stable(text: string): string {
     .replace(/\b\d+(?:\.\d+)?e-\d+\b/g, (size) => (size === "1e-6" || size === "1e-9" ? size : "x"))
     .replace(/(\d\.\d{3})\d*\(\d+\) */g, "$1... ")
     .replace(/^\(\d+\)/m, "(x)")
+    .replace(/( eV) {2,}/g, "$1  ")
     .replace(/^(?:grid|time) .*$/gm, (line) => line.replace(/\d+(?:\.\d+)?/g, "x"))
     .replace(/ +limit/g, " limit")
     .replace(/ +$/gm, "");
@@ -110,7 +111,7 @@ describe("postern estimate as text", () => {
       a packet is not its mean energy
         transmission of the packet        0.026... all its energies, each with its weight
         transmission at its mean energy   0.023... a plane wave of 0.15 eV
-        energy that carried most through  0.162 eV        the peak of the energies of what got through
+        energy that carried most through  0.162 eV  the peak of the energies of what got through
 
       remaining   x of the packet, inside the structure or on its way at the end
       norm drift  x
