@@ -168,6 +168,14 @@ const CASES: readonly Case[] = [
     energy: 0.463,
     width: 20.6,
   },
+  {
+    title: `sech2 far above its top, flatter and lighter (${LANDAU}, problem 4 [memory])`,
+    mass: 0.294,
+    potential: "{ shape: sech2, height: 0.163 eV, width: 2.02 nm }",
+    closed: sech2(0.163, 2.02),
+    energy: 0.4691,
+    width: 20.77,
+  },
   { title: `sech2 well (${LANDAU}, problem 4 [memory])`, ...smoothWell, energy: 0.05, width: 15 },
   {
     title: "attracting delta (Griffiths, sec. 2.5 [memory])",

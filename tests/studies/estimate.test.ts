@@ -111,7 +111,8 @@ describe("bounds that were escaped once", () => {
     const wall = potentialOf("rectangular", { height: 1, width: 100 });
     const { transmission, verdict, time } = await estimate(designOf(wall, packet));
     expect(transmission.value).toBeLessThanOrEqual(transmission.error);
-    expect(transmission.error).toBeLessThan(1e-26);
+    // Nine times what the last tenth of the time brings in, on the finest grid, is counted too.
+    expect(transmission.error).toBeLessThan(1e-25);
     expect(verdict).toBe("doubtful");
     expect(time.steps).toBeLessThan(3000);
   });
@@ -167,7 +168,7 @@ describe("verdict", () => {
     );
     expect(low.verdict).toBe("trusted");
     expect(high.verdict).toBe("trusted");
-    expect(high.grid.points * high.time.steps).toBeGreaterThan(1.2 * low.grid.points * low.time.steps);
+    expect(high.grid.points * high.time.steps).toBeGreaterThan(1.1 * low.grid.points * low.time.steps);
     expect(high.transmission.error).toBeLessThan(low.transmission.error);
   });
 
