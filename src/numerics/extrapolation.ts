@@ -7,8 +7,8 @@ export interface Extrapolated {
 
 /**
  * The bound is the larger of these shares of the last change and of the one before. A change can be small by accident, where two error
- * terms cross, so the one before has a say. Measured on 859 random stacks, barriers, wells and steps against
- * closed forms: no error above 0.65 of the bound; shares of 0.5 and 0.01 let one escape.
+ * terms cross, so the one before has a say. Shares of 0.5 and 0.01 let one of some
+ * 470 random designs escape; these let one of 2,462 smooth ones escape after four measurements, none seen after five.
  */
 const SHARE_OF_LAST = 2;
 const SHARE_OF_ONE_BEFORE = 0.02;
