@@ -15,7 +15,7 @@ export type { MapWindow } from "./analysis/density-recorder.js";
 export { DensityRecorder } from "./analysis/density-recorder.js";
 // Single calculations: a run made ready, the only time loop, and what looks on.
 export type { Recorder } from "./analysis/recorder.js";
-export type { Bounded, DensityMap, Series, SeriesColumn } from "./analysis/results.js";
+export type { DensityMap, Series, SeriesColumn } from "./analysis/results.js";
 export { type Observed, SeriesRecorder } from "./analysis/series-recorder.js";
 // Designs.
 export { type DesignDescription, type DesignValue, describeDesign } from "./design/describe.js";
@@ -54,6 +54,7 @@ export { type Estimate, estimate } from "./studies/estimate.js";
 export { type History, type HistoryOptions, history } from "./studies/history.js";
 export { DesignLimitError } from "./studies/limits.js";
 export { type PreparedRun, type PrepareOptions, prepare } from "./studies/prepare.js";
+export type { Bounded } from "./units/bounded.js";
 
 // Quantities, and numbers with their bounds.
 export { concise } from "./units/concise.js";

@@ -1,9 +1,3 @@
-/** A number together with a bound that the true value of the stated model lies within: |true - value| <= error. */
-export interface Bounded {
-  readonly value: number;
-  readonly error: number;
-}
-
 /** |psi|^2 over space and time, as cell means in 1/nm: row-major, row 0 the earliest, column 0 the leftmost. */
 export interface DensityMap {
   readonly columns: number;

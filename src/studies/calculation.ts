@@ -1,4 +1,4 @@
-import type { Bounded } from "../analysis/results.js";
+import type { Bounded } from "../units/bounded.js";
 
 /** One line of the list that the verdict rests on. */
 export interface Check {

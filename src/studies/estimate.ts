@@ -1,8 +1,8 @@
-import type { Bounded } from "../analysis/results.js";
 import { departure } from "../grid/journey.js";
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
 import { stepperNamed } from "../steppers/registry.js";
 import { splitOperator } from "../steppers/split-operator.js";
+import type { Bounded } from "../units/bounded.js";
 import { atMost, type Calculation, type Check, type StudyOptions } from "./calculation.js";
 import { chooseStepper } from "./choose-stepper.js";
 import { relativeError } from "./common-checks.js";

@@ -1,6 +1,6 @@
-import type { Bounded } from "../analysis/results.js";
 import type { Departure } from "../grid/journey.js";
 import { wavenumberOf, wavenumberWeight } from "../packets/gaussian.js";
+import type { Bounded } from "../units/bounded.js";
 import { HBAR } from "../units/constants.js";
 import { beyondFace } from "./common-checks.js";
 import type { Outcome } from "./outcome.js";
