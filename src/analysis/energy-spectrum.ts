@@ -44,11 +44,49 @@ export function wavenumberDensity(
   return (re * re + im * im) / (2 * Math.PI);
 }
 
+/** Nodes after which a turned phase is computed afresh: rounding grows by one unit in the last place a node. */
+const FRESH = 32;
+/** Relative difference up to which neighbouring spacings count as equal: coordinates carry their rounding. */
+const EQUAL_SPACING = 1e-9;
+
 /**
- * (2/pi) |sum_j w_j psi_j sin(k (x_j - wall))|^2 over nodes `from` ... `to` - 1: probability per wavenumber, nm, of what is on its
- * way to, at or back from a closed end at `wall`. The sines are the waves of the stretch before that end, so the
- * density does not change while a group is turned round. Cost O(n).
+ * sqrt(2/pi) sum_j w_j psi_j sin(k (x_j - wall)) over nodes `from` ... `to` - 1: the amplitude per root of wavenumber, sqrt(nm), of what is
+ * on its way to, at or back from a closed end at `wall` (nm). The sines are the waves of the stretch before that end, so the
+ * modulus does not change while a group is turned round. Cost O(n); phases are turned from node to node along equal spacings.
  */
+export function wallAmplitude(
+  psi: Float64Array,
+  grid: Grid,
+  from: number,
+  to: number,
+  k: number,
+  wall: number,
+): [re: number, im: number] {
+  const { x, weight, spacing } = grid;
+  let re = 0;
+  let im = 0;
+  for (let j = from; j < to; ) {
+    const h = spacing[Math.min(j, spacing.length - 1)];
+    const [turnCos, turnSin] = [Math.cos(k * h), Math.sin(k * h)];
+    let cos = Math.cos(k * (x[j] - wall));
+    let sin = Math.sin(k * (x[j] - wall));
+    const stop = Math.min(to, j + FRESH);
+    for (;;) {
+      const wave = weight[j] * sin;
+      re += psi[2 * j] * wave;
+      im += psi[2 * j + 1] * wave;
+      j++;
+      if (j >= stop || Math.abs(spacing[j - 1] - h) > EQUAL_SPACING * h) break;
+      const next = sin * turnCos + cos * turnSin;
+      cos = cos * turnCos - sin * turnSin;
+      sin = next;
+    }
+  }
+  const scale = Math.sqrt(2 / Math.PI);
+  return [scale * re, scale * im];
+}
+
+/** |wallAmplitude|^2: probability per wavenumber, nm. */
 export function wallDensity(
   psi: Float64Array,
   grid: Grid,
@@ -57,13 +95,6 @@ export function wallDensity(
   k: number,
   wall: number,
 ): number {
-  const { x, weight } = grid;
-  let re = 0;
-  let im = 0;
-  for (let j = from; j < to; j++) {
-    const wave = weight[j] * Math.sin(k * (x[j] - wall));
-    re += psi[2 * j] * wave;
-    im += psi[2 * j + 1] * wave;
-  }
-  return ((re * re + im * im) * 2) / Math.PI;
+  const [re, im] = wallAmplitude(psi, grid, from, to, k, wall);
+  return re * re + im * im;
 }

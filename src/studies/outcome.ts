@@ -84,7 +84,10 @@ export async function runToEnd(
  * The packet as a grid holds it best: with the wavenumber and width whose energy and spread of energy, by the grid's own dispersion
  * relation, are those of the design. Both tend to the design's own as the spacing vanishes, with an error of second order.
  */
-function packetOnGrid({ packet, direction, mass, energy, near }: Departure, grid: Grid): GaussianPacket {
+export function packetOnGrid(
+  { packet, direction, mass, energy, near }: Departure,
+  grid: Grid,
+): GaussianPacket {
   if (grid.ends === "periodic") return packet;
   const step = direction > 0 ? grid.spacing[0] : grid.spacing[grid.spacing.length - 1];
   const wave = gridWave(energy - near, mass, step);
