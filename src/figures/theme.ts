@@ -4,6 +4,10 @@ export const PROFILE_LINE = "#1f3352";
 export const PROFILE_FILL = "#cdd6e4";
 export const MASS_SHADE = "#f6e3bd";
 export const ENERGY_LINE = "#b3400f";
+export const REFLECTION_LINE = "#1f6b4a";
+export const RESONANCE_LINE = "#7a1f6b";
+/** Where nothing can be known, such as below round-off. */
+export const HIDDEN_FILL = "#e3e3e6";
 export const PAPER = "#ffffff";
 
 /** Parts of the base font size. */
