@@ -1,4 +1,4 @@
-import { z } from "zod";
+import * as z from "zod";
 import { shapes } from "../potentials/registry.js";
 import { designSchema, shapeSchema, useSchema } from "./schema.js";
 

@@ -23,7 +23,7 @@
  * `with` takes the names under `parameters`, and besides them any top-level key of the potential (`height`, `center`).
  */
 
-import { z } from "zod";
+import * as z from "zod";
 import { describeValue } from "../units/quantity.js";
 import { type Path, parsePath } from "./path.js";
 import { faultText, mapSchema, quantitySchema } from "./quantity-schema.js";

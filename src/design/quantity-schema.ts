@@ -1,4 +1,4 @@
-import { z } from "zod";
+import * as z from "zod";
 import type { QuantityParameter } from "../potentials/shape.js";
 import { nearest } from "../units/nearest.js";
 import {

@@ -1,4 +1,4 @@
-import { z } from "zod";
+import * as z from "zod";
 import { shapeNamed, shapes } from "../potentials/registry.js";
 import type { ShapeDefinition } from "../potentials/shape.js";
 import { nearest } from "../units/nearest.js";

@@ -1,4 +1,4 @@
-import { z } from "zod";
+import * as z from "zod";
 import type { ParameterValues, ShapeDefinition, ShapeParameter } from "../potentials/shape.js";
 import { DEFAULT_ACCURACY } from "../problem/design.js";
 import { nearest } from "../units/nearest.js";
