@@ -47,7 +47,7 @@ export { type SketchOptions, sketch } from "./potentials/sketch.js";
 export { DEFAULT_ACCURACY, type Design, type Numerics, type PacketDesign } from "./problem/design.js";
 export { type PropagateOptions, propagate, type Run } from "./propagate.js";
 export { stepperNamed, steppers } from "./steppers/registry.js";
-export type { Stepper, StepperDefinition, System } from "./steppers/stepper.js";
+export type { Stepper, StepperDefinition, System, TimeOrder } from "./steppers/stepper.js";
 // Studies: from a design to an answer.
 export type { Calculation, Check, Progress, RunSummary, StudyOptions } from "./studies/calculation.js";
 export { type Estimate, estimate } from "./studies/estimate.js";

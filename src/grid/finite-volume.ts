@@ -48,3 +48,21 @@ export function finiteVolume(grid: Grid, potential: Potential): FiniteVolume {
   }
   return { diagonal, coupling, potential: v };
 }
+
+/** out <- H psi (interleaved states), zero beyond the ends. @throws RangeError when out is psi */
+export function applyFiniteVolume(
+  out: Float64Array,
+  psi: Float64Array,
+  { diagonal, coupling }: FiniteVolume,
+  weight: Float64Array,
+): void {
+  if (out === psi) throw new RangeError("applyHamiltonian: the output must not be the state itself");
+  const n = weight.length;
+  for (let c = 0; c < 2; c++) {
+    for (let j = 0; j < n; j++) {
+      const left = j > 0 ? coupling[j] * psi[2 * (j - 1) + c] : 0;
+      const right = j < n - 1 ? coupling[j + 1] * psi[2 * (j + 1) + c] : 0;
+      out[2 * j + c] = diagonal[j] * psi[2 * j + c] - (left + right) / weight[j];
+    }
+  }
+}

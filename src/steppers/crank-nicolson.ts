@@ -1,4 +1,4 @@
-import { finiteVolume } from "../grid/finite-volume.js";
+import { applyFiniteVolume, finiteVolume } from "../grid/finite-volume.js";
 import { type Complex, TwoEndedFactors } from "../numerics/tridiagonal.js";
 import { HBAR } from "../units/constants.js";
 import { checkPrepare, type Stepper, type StepperDefinition } from "./stepper.js";
@@ -33,7 +33,7 @@ const POLES: Readonly<Record<number, readonly Complex[]>> = {
  * Source: Crank and Nicolson, Proc. Camb. Phil. Soc. 43, 50 (1947); Goldberg, Schey, Schwartz, Am. J. Phys. 35, 177
  * (1967); orders 4 and 6: van Dijk and Toyama, Phys. Rev. E 75, 036707 (2007).
  */
-export const crankNicolson: StepperDefinition = {
+export const crankNicolson: StepperDefinition<number> = {
   name: "crank-nicolson",
   summary:
     "implicit, tridiagonal, interfaces on nodes, mass may vary; transmission independent of the time step",
@@ -47,7 +47,8 @@ export const crankNicolson: StepperDefinition = {
   prepare(system, timeStep, order) {
     const chosen = checkPrepare(crankNicolson, system, timeStep, order);
     const { weight } = system.grid;
-    const { diagonal, coupling, potential } = finiteVolume(system.grid, system.potential);
+    const hamiltonian = finiteVolume(system.grid, system.potential);
+    const { diagonal, coupling, potential } = hamiltonian;
     const n = weight.length;
     const tau = timeStep / HBAR;
     const below = new Float64Array(n);
@@ -84,28 +85,9 @@ export const crankNicolson: StepperDefinition = {
         for (const { factors, phase, turn } of poles) factors.step(psi, phase, turn);
       },
       applyHamiltonian(out, psi) {
-        applyTridiagonal(out, psi, diagonal, coupling, weight);
+        applyFiniteVolume(out, psi, hamiltonian, weight);
       },
     };
     return stepper;
   },
 };
-
-/** out_j = diagonal_j psi_j - (coupling_j psi_(j-1) + coupling_(j+1) psi_(j+1)) / w_j, zero beyond the ends. */
-function applyTridiagonal(
-  out: Float64Array,
-  psi: Float64Array,
-  diagonal: Float64Array,
-  coupling: Float64Array,
-  weight: Float64Array,
-): void {
-  if (out === psi) throw new RangeError("applyHamiltonian: the output must not be the state itself");
-  const n = weight.length;
-  for (let c = 0; c < 2; c++) {
-    for (let j = 0; j < n; j++) {
-      const left = j > 0 ? coupling[j] * psi[2 * (j - 1) + c] : 0;
-      const right = j < n - 1 ? coupling[j + 1] * psi[2 * (j + 1) + c] : 0;
-      out[2 * j + c] = diagonal[j] * psi[2 * j + c] - (left + right) / weight[j];
-    }
-  }
-}

@@ -5,6 +5,7 @@ import { SeriesRecorder } from "../analysis/series-recorder.js";
 import type { Departure } from "../grid/journey.js";
 import type { Design } from "../problem/design.js";
 import { propagate } from "../propagate.js";
+import type { TimeOrder } from "../steppers/stepper.js";
 import { HBAR } from "../units/constants.js";
 import type { StudyOptions } from "./calculation.js";
 import { type PreparedRun, type PrepareOptions, prepare } from "./prepare.js";
@@ -39,7 +40,7 @@ export interface History {
   readonly series: Series;
   readonly map: DensityMap;
   readonly stepper: string;
-  readonly order: number;
+  readonly order: TimeOrder;
   readonly grid: { readonly points: number; readonly step_nm: number };
   readonly time: { readonly step_fs: number; readonly end_fs: number; readonly steps: number };
   /**
