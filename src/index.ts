@@ -31,6 +31,7 @@ export { readLibraryEntry } from "./design/use.js";
 // Figures.
 export { type Figure, figureToSvg, type Raster } from "./figures/figure.js";
 export { type MapFigureOptions, mapFigure } from "./figures/map-figure.js";
+export { type SpectrumFigureOptions, spectrumFigure } from "./figures/spectrum-figure.js";
 export type { Grid } from "./grid/grid.js";
 // Potentials.
 export type { Potential } from "./potentials/potential.js";
@@ -54,6 +55,14 @@ export { type Estimate, estimate } from "./studies/estimate.js";
 export { type History, type HistoryOptions, history } from "./studies/history.js";
 export { DesignLimitError } from "./studies/limits.js";
 export { type PreparedRun, type PrepareOptions, prepare } from "./studies/prepare.js";
+export {
+  type Spectrum,
+  type SpectrumMethod,
+  type SpectrumOptions,
+  type SpectrumRow,
+  spectrum,
+} from "./studies/spectrum.js";
+export { evenEnergies, packetEnergies } from "./studies/spectrum-energies.js";
 export type { Bounded } from "./units/bounded.js";
 
 // Quantities, and numbers with their bounds.

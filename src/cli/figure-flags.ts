@@ -32,11 +32,11 @@ export function figureKind({ out, svg }: FigureFlags): FigureKind {
   );
 }
 
-/** Print size in mm, as far as it is asked for. */
-export async function figureSizeOf({
-  width,
-  height,
-}: FigureFlags): Promise<{ widthMm?: number; heightMm?: number }> {
+/** Print size in mm, as far as it is asked for; `ratio` is the figure's own height over its width, that of a map when left out. */
+export async function figureSizeOf(
+  { width, height }: Pick<FigureFlags, "width" | "height">,
+  ratio?: number,
+): Promise<{ widthMm?: number; heightMm?: number }> {
   if (width === undefined && height === undefined) return {};
   const [{ parseQuantity }, { figureSize }, figures] = await Promise.all([
     import("../units/quantity.js"),
@@ -56,7 +56,9 @@ export async function figureSizeOf({
   const { DEFAULT_DPI, DEFAULT_HEIGHT_RATIO, DEFAULT_WIDTH_MM } = figures;
   const asked = widthMm ?? DEFAULT_WIDTH_MM;
   const options = [width && `--width ${width}`, height && `--height ${height}`].filter(Boolean).join(" ");
-  naming(options, SIZE_HELP, () => figureSize(asked, heightMm ?? DEFAULT_HEIGHT_RATIO * asked, DEFAULT_DPI));
+  naming(options, SIZE_HELP, () =>
+    figureSize(asked, heightMm ?? (ratio ?? DEFAULT_HEIGHT_RATIO) * asked, DEFAULT_DPI),
+  );
   return { widthMm, heightMm };
 }
 

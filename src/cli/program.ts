@@ -6,13 +6,14 @@ import { mapCommand } from "./map.js";
 import { potentialsCommand } from "./potentials.js";
 import { errorReport } from "./report-error.js";
 import { Interrupted, type Session } from "./session.js";
+import { spectrumCommand } from "./spectrum.js";
 import { COLUMNS, say, watchOutput } from "./terminal.js";
 import { UsageError } from "./usage-error.js";
 import { validateCommand } from "./validate.js";
 import { version } from "./version.js";
 
 /** Every command, in the order in which help lists them. A new command is one file and one line here. */
-const COMMANDS = [estimateCommand, mapCommand, validateCommand, potentialsCommand];
+const COMMANDS = [estimateCommand, spectrumCommand, mapCommand, validateCommand, potentialsCommand];
 
 /** Runs the program with its arguments; returns what it ends with. */
 export async function run(args: readonly string[]): Promise<number> {

@@ -28,8 +28,8 @@ export interface EnergyAxis {
  */
 export function energyAxis(from: number, to: number, width: number, em: number): EnergyAxis {
   const narrow = to - from < NARROW * Math.abs(to);
-  // A round energy near the middle: one digit coarser than the range itself.
-  const coarse = 10 ** Math.ceil(Math.log10(to - from));
+  // A round energy near the middle, by the first digit of the range.
+  const coarse = 10 ** Math.floor(Math.log10(to - from));
   const origin = narrow ? Number((Math.round((from + to) / 2 / coarse) * coarse).toPrecision(15)) : 0;
   const unit = axisUnit("energy", Math.max(Math.abs(from - origin), Math.abs(to - origin)));
   const on = (energy: number) => (energy - origin) / unit.size;

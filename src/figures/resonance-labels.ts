@@ -33,7 +33,7 @@ export function resonanceLabels(
   const sharpFirst = [...resonances].sort((a, b) => a.width - b.width);
   for (const { energy, width } of sharpFirst) {
     const x = placeOf(box, energies, energy);
-    const lines = [energies.label(energy, width / 5), widthText(width)];
+    const lines = [energies.label(energy, width / 20), widthText(width)];
     const half = Math.max(...lines.map((line) => textWidth(line, size))) / 2;
     // Near an end of the axis the label moves inward rather than over the edge of the page.
     const middle = Math.min(Math.max(x, half + 0.3 * em), page - half - 0.3 * em);
@@ -42,7 +42,7 @@ export function resonanceLabels(
       continue;
     taken.push([left, right]);
     lines.forEach((line, n) => {
-      const y = box.y - (0.75 + (1 - n) * LINE) * em;
+      const y = box.y - (0.82 + (1 - n) * LINE) * em;
       texts.push(textAt(plain(line), { x: middle, y, size, anchor: "middle", fill: RESONANCE_LINE }));
     });
   }

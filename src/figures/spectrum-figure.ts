@@ -37,7 +37,7 @@ const LONE_MARGIN = 0.1;
 /** Margin of the axis beside a mark at its end, relative to the range. */
 const MARK_MARGIN = 0.025;
 /** Weight of the packet, relative to its peak, that is seen as a shade. */
-const SEEN_WEIGHT = 0.01;
+const SEEN_WEIGHT = 0.03;
 
 /**
  * Draws transmission against energy as a figure: on a linear scale above, on a logarithmic one below, with the packet's energies as a shade,

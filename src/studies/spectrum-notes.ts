@@ -1,7 +1,6 @@
 import type { Design } from "../problem/design.js";
 import { formatQuantity } from "../units/quantity.js";
 import { isForced } from "./forced.js";
-import type { SpectrumPacket } from "./packet-spectrum.js";
 import type { SpectrumMethod, SpectrumRow } from "./spectrum.js";
 
 /** What a reader of a spectrum should know, in sentences. */
@@ -9,7 +8,6 @@ export function spectrumNotes(
   design: Design,
   method: SpectrumMethod,
   rows: readonly SpectrumRow[],
-  packets: readonly SpectrumPacket[],
   floor: number,
 ): string[] {
   const { potential, numerics } = design;
@@ -21,8 +19,6 @@ export function spectrumNotes(
       `Energies are measured from the left level; the right one lies ${apart} ${right > 0 ? "above" : "below"} it. T and R are the same from both sides.`,
     );
   }
-  if (method === "packet" && packets.length > 1)
-    notes.push(`${packets.length} packets were sent: one alone does not carry all of these energies.`);
   const hidden = rows.filter(({ transmission }) => transmission.value < floor).length;
   if (method === "packet" && hidden > 0)
     notes.push(

@@ -10,9 +10,12 @@ export interface Resonance {
 const GOLDEN = (Math.sqrt(5) - 1) / 2;
 /** Sections of a bracket: they leave 1e-14 of it. */
 const SECTIONS = 67;
-/** First step from a peak outward, relative to the bracket, and most doublings of it. */
+/** First step from a peak outward, relative to the bracket, how much longer each next one reaches, and how many there are at most. */
 const FIRST_STEP = 1e-12;
-const DOUBLINGS = 60;
+const LENGTHENING = 1.25;
+const STEPS = 200;
+/** Relative rounding of T, far above that of the witness: it makes no valley. */
+const ROUNDING = 1e-9;
 /** Halvings of the stretch in which T passes through half its maximum. */
 const HALVINGS = 40;
 /** Peaks that are looked at closely, at most. */
@@ -21,12 +24,12 @@ const MOST_PEAKS = 200;
 /**
  * The peaks of T between the first row and the last: every local maximum of the rows is looked at closely, by the golden section on 1/T,
  * which is a parabola at a resonance (G. Breit and E. Wigner, Phys. Rev. 49, 519 (1936), from memory), and counts where T falls to
- * half of it on both sides before it rises above it again. A peak that stands between two rows without being seen in either is not found.
+ * half of it on both sides without rising in between. A peak that stands between two rows without being seen in either is not found.
  *
  * @param rows ascending in energy
  * @param transmissionAt T at an energy (eV above the left level)
  * @param threshold energy at and below which nothing is transmitted
- * Cost: some 300 values of T for each peak.
+ * Cost: some 500 values of T for each peak.
  */
 export function peaks(
   rows: readonly SpectrumRow[],
@@ -68,7 +71,7 @@ function maximum(transmissionAt: (energy: number) => number, low: number, high: 
   return (a + b) / 2;
 }
 
-/** Where T has fallen to half of its value at `peak`, in steps that double, then by halving; undefined when it rises first. */
+/** Where T has fallen to half of its value at `peak`, by steps of growing length and then by halving; undefined when it rises before. */
 function halfPlace(
   transmissionAt: (energy: number) => number,
   peak: number,
@@ -76,15 +79,14 @@ function halfPlace(
   threshold: number,
 ): number | undefined {
   const top = transmissionAt(peak);
-  let inner = peak;
-  for (let n = 0, step = firstStep; n < DOUBLINGS; n++, step *= 2) {
-    // Below the threshold nothing is transmitted, so T has passed through its half before.
+  let [inner, last] = [peak, top];
+  for (let n = 0, step = firstStep; n < STEPS; n++, step *= LENGTHENING) {
+    // At the threshold nothing is transmitted, so that T has passed through its half before.
     const outer = Math.max(threshold, peak + step);
     const value = outer > threshold ? transmissionAt(outer) : 0;
-    // The summit is flat: its own rounding is no rise.
-    if (value > top * (1 + 1e-9)) return undefined;
+    if (value > last * (1 + ROUNDING)) return undefined;
     if (value <= top / 2) return halved(transmissionAt, inner, outer, top / 2);
-    inner = outer;
+    [inner, last] = [outer, value];
   }
   return undefined;
 }

@@ -97,7 +97,7 @@ export async function spectrum(
     resonances: peaks(rows, (energy) => witness.at(potential.levelLeft + energy).transmission.value, least),
     checks,
     verdict: checks.every((check) => check.passed) ? "trusted" : "doubtful",
-    notes: spectrumNotes(design, method, rows, packets, floor),
+    notes: spectrumNotes(design, method, rows, floor),
   };
 }
 
