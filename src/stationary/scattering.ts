@@ -41,6 +41,8 @@ export interface Scatterer {
   at(energy: number): Scattering;
   /** The same for exact kinetic energies on both sides, and with them what the quadratures need. */
   sweep(energy: ScatteringEnergy): Sweep;
+  /** Number of bound states, all below the lower level. */
+  boundStates(): number;
 }
 
 /**
@@ -82,7 +84,11 @@ export function prepareScattering(
     };
     return scatteringOf(incidence, sweeper.run(incidence));
   };
-  return { near, far, nearMass, farMass, at, sweep };
+  const boundStates = () => {
+    const lower = Math.min(near, far);
+    return sweeper.statesBelow({ energy: lower, near: lower - near, far: lower - far, from });
+  };
+  return { near, far, nearMass, farMass, at, sweep, boundStates };
 }
 
 /**

@@ -32,7 +32,10 @@ export interface Sweep {
   /** Velocities hbar k / m without the hbar: k/m near and far; far 0 where the wave cannot leave. */
   readonly nearVelocity: number;
   readonly farVelocity: number;
-  /** Phase (rad) that the wave gathers from the near face to the far face; grows by pi across a narrow resonance. */
+  /**
+   * Phase (rad) that the wave gathers from the near face to the far face, or where it cannot leave the phase of the reflected
+   * wave, halved: grows by pi across a narrow resonance, whichever way the wave decays.
+   */
   readonly phase: number;
 }
 
@@ -56,13 +59,8 @@ export class Sweeper {
   run(incidence: Incidence): Sweep {
     const { structure, chain } = this;
     const { energy, near, far, from, slack } = incidence;
-    chain.clear();
-    for (const element of structure.elements) element.transfer(chain, energy, slack);
+    this.tabulate(energy, slack);
     const fromLeft = from === "left";
-    if (this.exponents.length < chain.count + 1) {
-      this.y = new Float64Array(8 * (chain.count + 1));
-      this.exponents = new Float64Array(2 * (chain.count + 1));
-    }
     const [nearMass, farMass] = fromLeft ? structure.masses : [structure.masses[1], structure.masses[0]];
     const v = Math.sqrt((2 * near) / nearMass) / HBAR;
     const vFar = Math.sqrt((2 * Math.abs(far)) / farMass) / HBAR;
@@ -84,8 +82,35 @@ export class Sweeper {
       error: 1.1 * (4 * U * size + nearVelocity * Math.hypot(er, ei) + inner),
       nearVelocity: v,
       farVelocity: far > 0 ? vFar : 0,
-      phase,
+      // With a real psi its zeros are half turns, and psi + i eta/v fills in between them.
+      phase: far > 0 ? phase : phase - Math.atan(er / pr),
     };
+  }
+
+  /**
+   * Number of bound states below an energy that lies above neither level: the zeros of the solution that decays on the far side, those
+   * outside the near face included.
+   */
+  statesBelow({ energy, near, far, from }: Pick<Incidence, "energy" | "near" | "far" | "from">): number {
+    const { structure, chain, y } = this.tabulate(energy, 0);
+    const fromLeft = from === "left";
+    const [nearMass, farMass] = fromLeft ? structure.masses : [structure.masses[1], structure.masses[0]];
+    const turned = this.forward(fromLeft, Math.sqrt((-2 * far) / farMass) / HBAR, 0);
+    const [psi, eta] = [y[4 * chain.count], y[4 * chain.count + 2]];
+    // Outside, psi cosh(kappa xi) + m eta sinh(kappa xi)/kappa has a zero when its growing part has the other sign.
+    const growing = psi * (Math.sqrt((-2 * near) / nearMass) / HBAR) + eta;
+    return Math.round(turned / Math.PI) + (psi * growing < 0 ? 1 : 0);
+  }
+
+  private tabulate(energy: number, slack: number): this {
+    const { structure, chain } = this;
+    chain.clear();
+    for (const element of structure.elements) element.transfer(chain, energy, slack);
+    if (this.exponents.length < chain.count + 1) {
+      this.y = new Float64Array(8 * (chain.count + 1));
+      this.exponents = new Float64Array(2 * (chain.count + 1));
+    }
+    return this;
   }
 
   /** y from the far face to the near face; returns the phase gathered on the way. */
