@@ -1,5 +1,5 @@
 import { alignedGrid, alignedPoints } from "../grid/aligned.js";
-import { Extrapolation } from "../numerics/extrapolation.js";
+import { CAUTION, Extrapolation } from "../numerics/extrapolation.js";
 import type { Design } from "../problem/design.js";
 import { crankNicolson } from "../steppers/crank-nicolson.js";
 import { atMost, type Calculation, type RunSummary, type StudyOptions } from "./calculation.js";
@@ -119,7 +119,7 @@ async function attemptAt(
     const [small, direct] =
       outcomes[0].outcome.transmitted < 0.5 ? [outcome.transmitted, t] : [outcome.reflected, r];
     const second = Math.exp(logarithm.add(1 / refinement, Math.log(Math.max(small, Number.MIN_VALUE))).value);
-    spacing = Math.min(1, Math.max(t.error, Math.abs(direct.value - second)));
+    spacing = Math.min(1, Math.max(t.error, CAUTION * Math.abs(direct.value - second)));
     atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
     if (!held && prolonged(design, plan, outcome, accuracy, SLACK)) break;
     // Where too much remains for good, the grid need not be better than that.

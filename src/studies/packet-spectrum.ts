@@ -1,5 +1,5 @@
 import { alignedPoints } from "../grid/aligned.js";
-import { Extrapolation } from "../numerics/extrapolation.js";
+import { CAUTION, Extrapolation } from "../numerics/extrapolation.js";
 import { kineticEnergy, wavenumberOf } from "../packets/gaussian.js";
 import type { Design } from "../problem/design.js";
 import type { Bounded } from "../units/bounded.js";
@@ -210,7 +210,7 @@ async function refined(
       const x = inverse[i].add(1 / refinement, 1 / t);
       const l = logarithm[i].add(1 / refinement, Math.log(t));
       // Relative: T = 1/x, held against a second extrapolation in ln T.
-      const relative = Math.max(x.error / x.value, Math.abs(Math.exp(l.value) * x.value - 1));
+      const relative = Math.max(x.error / x.value, CAUTION * Math.abs(Math.exp(l.value) * x.value - 1));
       return relative >= 0 ? relative : Number.POSITIVE_INFINITY;
     });
     if (runs >= FEWEST_CALCULATIONS && spacing.every((s) => s <= SPACING_SHARE * accuracy)) break;
