@@ -1,6 +1,6 @@
-import { type Circle, largestTimeStep, refined } from "../grid/circle.js";
+import { largestTimeStep, refined } from "../grid/circle.js";
+import { hasPoint } from "../potentials/points.js";
 import type { Design } from "../problem/design.js";
-import { splitOperator } from "../steppers/split-operator.js";
 import { atMost, type Calculation, type Check, type StudyOptions } from "./calculation.js";
 import { Calculations } from "./circle-calculations.js";
 import { type CirclePlan, largestDrift, planCircle } from "./circle-plan.js";
@@ -10,6 +10,9 @@ import type { Outcome } from "./outcome.js";
 
 /** Share of the change on halving the step that the extrapolated value is believed within, by order: over twice what was seen on check-values 3.6. */
 const TIME_CAUTION: Readonly<Record<number, number>> = { 2: 0.5, 4: 0.15, 6: 0.06 };
+/** The same for the spacing where V has jumps (h^3 leaves a seventh) and where it has a point (h leaves all). */
+const JUMP_CAUTION = 0.35;
+const POINT_CAUTION = 1.5;
 const REMAINING_SHARE = 0.1;
 const PROLONGATION = 1.4;
 /** Work (points times transforms) after which nothing is refined or prolonged any more. */
@@ -28,8 +31,9 @@ interface Standing {
 }
 
 /**
- * Transmission by the split operator: whole calculations refined in space and in time, each axis as far as its own
- * share of the error demands, prolonged until what remains does not matter. What the user forced stays as it is.
+ * Transmission on a circle, by the split operator or by Chebyshev expansion: whole calculations refined in space and in time, each axis as far as its own
+ * share of the error demands, prolonged until what remains does not matter. What the user forced stays as it is, and so
+ * does the time step of a stepper that is exact in time.
  */
 export async function splitOperatorTransmission(
   design: Design,
@@ -82,18 +86,18 @@ async function refine(
   spent: number,
 ): Promise<Standing> {
   let s = plan.forcedSpace ? 0 : 1;
-  let t = plan.forcedTime ? 0 : 1;
+  let t = plan.fixedTime ? 0 : 1;
   for (;;) {
     // Where V has jumps, momenta up to the band's edge are populated and every drift must turn them by less than pi.
-    if (!plan.forcedTime && design.potential.slopeTransform)
+    if (!plan.fixedTime && design.potential.slopeTransform)
       while (plan.timeStep / 2 ** t > phaseLimit(plan, design, s)) t++;
     const standing = await stand(calculations, plan, design, s, t);
     const goal = 0.8 * accuracy * standing.transmission;
     if (standing.spacing + standing.time <= goal || tooMuchRemains(standing.outcome, accuracy))
       return standing;
-    const finerSpace = !plan.forcedSpace && (standing.spacing >= standing.time || plan.forcedTime);
+    const finerSpace = !plan.forcedSpace && (standing.spacing >= standing.time || plan.fixedTime);
     if (finerSpace) s++;
-    else if (!plan.forcedTime) t++;
+    else if (!plan.fixedTime) t++;
     else return standing;
     const cost = calculations.cost(s, t) + calculations.cost(s, t - 1) + calculations.cost(s - 1, t);
     if (spent + calculations.work + cost > WORK_LIMIT) return standing;
@@ -101,6 +105,7 @@ async function refine(
 }
 
 function phaseLimit(plan: CirclePlan, design: Design, s: number): number {
+  if (plan.order === "exact") return Number.POSITIVE_INFINITY;
   return largestTimeStep(refined(plan.circle, s).step, design.particleMass, largestDrift(plan.order));
 }
 
@@ -113,19 +118,22 @@ async function stand(
 ): Promise<Standing> {
   const jumps = design.potential.slopeTransform !== undefined;
   const outcome = await calculations.at(s, t);
-  const slower = plan.forcedTime ? outcome : await calculations.at(s, t - 1);
+  const slower = plan.fixedTime ? outcome : await calculations.at(s, t - 1);
   const coarser = plan.forcedSpace ? outcome : await calculations.at(s - 1, t);
   const change = outcome.transmitted - slower.transmitted;
   const [mean, meanSlower, meanCoarser] = [outcome, slower, coarser].map(
     (o) => o.transmissionAt(plan.from.energy) ?? 0,
   );
   // Smooth V: the declared order holds and the leading term is taken off; jumps spoil the order, so nothing is.
-  const gain = jumps ? 0 : 1 / (2 ** plan.order - 1);
-  const timeCaution = jumps ? 1 : TIME_CAUTION[plan.order];
+  const leading = !jumps && plan.order !== "exact";
+  const gain = leading ? 1 / (2 ** plan.order - 1) : 0;
+  const timeCaution = leading ? TIME_CAUTION[plan.order] : 1;
   // With jumps the error falls like the third power of the spacing, erratically. Smooth V: halving squares it, so that
   // the change is the error of the coarser grid and its own square root, cautiously enlarged, the share that is left.
+  // A point is held worse: its error falls like the first power, and all of the change is left.
+  const jumpCaution = hasPoint(design.potential) ? POINT_CAUTION : JUMP_CAUTION;
   const spaceCaution = (fine: number, coarse: number) =>
-    jumps ? 0.35 : Math.min(0.2, 5 * Math.sqrt(Math.abs(fine - coarse) / fine));
+    jumps ? jumpCaution : Math.min(0.2, 5 * Math.sqrt(Math.abs(fine - coarse) / fine));
   return {
     s,
     t,
@@ -155,16 +163,17 @@ function summary(
   const steps = calculations.steps(t);
   const timeStep = plan.timeStep / 2 ** t;
   const drift = calculations.drift();
+  const roundings = plan.order === "exact" ? calculations.pairs(s, t) : steps;
   // A transform's rounding is spread over all points: it is absolute, a few units in the last place per root of the number of steps.
   const roundOff =
     4 * drift * transmission +
-    8 * Number.EPSILON * Number.EPSILON * steps * circle.points +
-    4 * Number.EPSILON * Math.sqrt(steps) * Math.sqrt(transmission);
+    8 * Number.EPSILON * Number.EPSILON * roundings * circle.points +
+    4 * Number.EPSILON * Math.sqrt(roundings) * Math.sqrt(transmission);
   const start = startError(plan.from, transmission);
   const others = spacing + time + outcome.unfinished + start;
   const value = (x: number) => Math.min(1, Math.max(0, x));
   return {
-    stepper: splitOperator.name,
+    stepper: plan.definition.name,
     order: plan.order,
     transmission: { value: value(transmission), error: others + roundOff },
     // Near one it carries the drift of the norm whole.
@@ -190,7 +199,7 @@ function summary(
     carryingEnergy: carryingEnergy(outcome, plan.from),
     checks: [
       ...commonChecks(plan.from, outcome, drift, accuracy, transmission),
-      ...refinementChecks(design, plan, standing, timeStep, circle, accuracy),
+      ...refinementChecks(design, plan, standing, timeStep, accuracy),
     ],
   };
 }
@@ -200,11 +209,9 @@ function refinementChecks(
   plan: CirclePlan,
   standing: Standing,
   timeStep: number,
-  circle: Circle,
   accuracy: number,
 ): Check[] {
   const { spacing, time, transmission } = standing;
-  const limit = largestTimeStep(circle.step, design.particleMass, largestDrift(plan.order));
   const checks: Check[] = [];
   if (!plan.forcedSpace)
     checks.push(
@@ -215,7 +222,7 @@ function refinementChecks(
         "relative error left by the grid, from a whole calculation with half the points",
       ),
     );
-  if (!plan.forcedTime)
+  if (!plan.fixedTime)
     checks.push(
       atMost(
         "time step",
@@ -224,11 +231,11 @@ function refinementChecks(
         "relative error left by the time step, from a whole calculation with twice the step",
       ),
     );
-  if (design.potential.slopeTransform || plan.forcedTime)
+  if (plan.order !== "exact" && (design.potential.slopeTransform || plan.forcedTime))
     checks.push(
       atMost(
         "kinetic phase",
-        timeStep / limit,
+        timeStep / phaseLimit(plan, design, standing.s),
         1,
         "kinetic phase of one drift at the largest momentum of the grid, in units of pi; above 1 high momenta are folded onto low ones",
       ),
