@@ -53,7 +53,7 @@ const RECORD_LENGTH = 1.8;
 /** Shares of the error asked for that the end and the spacing may take. */
 const UNFINISHED_SHARE = 0.1;
 const SPACING_SHARE = 0.7;
-const FEWEST_CALCULATIONS = 5;
+const FEWEST_CALCULATIONS = 4;
 /** Work (nodes times steps) of one calculation, and of all of them, beyond which nothing is refined or tried again. */
 const RUN_LIMIT = 2e8;
 const TOTAL_LIMIT = 1.5e9;
