@@ -56,6 +56,31 @@ export function core(potential: Potential): readonly [number, number] {
   ];
 }
 
+/** Height up to which a rising flank counts as the foot, as a share of the way to the top. */
+const FOOT_HEIGHT = 0.5;
+
+/**
+ * The place (nm) up to which a smooth potential rises steadily to half its height on the side that a packet comes from (`direction` +1: the
+ * left). What lingers before it is slow: it has no well to be held in and will be sent back, so it is not still to be shared out. Layers, and
+ * shapes that fall first, have no such foot: theirs ends where the core begins.
+ */
+export function footEnd(potential: Potential, direction: 1 | -1): number {
+  const [left, right] = core(potential);
+  const [near, far, level] =
+    direction > 0 ? [left, right, potential.levelLeft] : [right, left, potential.levelRight];
+  if (potential.scale === Number.POSITIVE_INFINITY || potential.confining) return near;
+  const top = level + FOOT_HEIGHT * (potential.highest - level);
+  const step = (direction * potential.scale) / 16;
+  let at = near;
+  while ((far - at) * direction > 0) {
+    const next = potential.value(at + step);
+    if (next < potential.value(at)) return near;
+    if (next > top) return at;
+    at += step;
+  }
+  return near;
+}
+
 /** sum_j w_j |psi_j|^2 over the three parts. Cost O(n). */
 export function shares(psi: Float64Array, grid: Grid, division: Division): Shares {
   const { weight } = grid;

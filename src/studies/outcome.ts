@@ -1,8 +1,18 @@
 import { gridWave, wallDensity, wavenumberDensity } from "../analysis/energy-spectrum.js";
-import { core, type Division, divide, norm, type Shares, shares, tails } from "../analysis/probabilities.js";
+import {
+  core,
+  type Division,
+  divide,
+  footEnd,
+  norm,
+  type Shares,
+  shares,
+  tails,
+} from "../analysis/probabilities.js";
 import type { Grid } from "../grid/grid.js";
 import type { Departure } from "../grid/journey.js";
 import { type GaussianPacket, sampleGaussian, wavenumberWeight } from "../packets/gaussian.js";
+import type { Potential } from "../potentials/potential.js";
 import { propagate } from "../propagate.js";
 import type { Stepper } from "../steppers/stepper.js";
 import type { StudyOptions } from "./calculation.js";
@@ -11,6 +21,7 @@ import type { StudyOptions } from "./calculation.js";
 export interface Outcome {
   readonly transmitted: number;
   readonly reflected: number;
+  /** Probability between the foot of the near flank and the far end of the structure. */
   readonly inside: number;
   /** `inside` when nine tenths of the time were over. */
   readonly insideBefore: number;
@@ -46,7 +57,9 @@ export async function runToEnd(
   sampleGaussian(psi, grid.x, packet);
   const start = norm(psi, grid.weight);
   const division = divide(grid, core(potential), seam);
+  const foot = divide(grid, footOf(potential, from.direction), seam);
   const through = (s: Shares) => (from.direction > 0 ? s.right : s.left);
+  const insideOf = (state: Float64Array) => norm(state, grid.weight, foot.first, foot.end);
   let earlier = 0;
   let insideBefore = 0;
   const mark = Math.max(1, Math.floor(steps * (1 - LAST_PART)));
@@ -56,7 +69,7 @@ export async function runToEnd(
       if (Math.abs(time - mark * stepper.timeStep) > 0.5 * Math.abs(stepper.timeStep)) return;
       const parts = shares(state, grid, division);
       earlier = through(parts);
-      insideBefore = parts.inside;
+      insideBefore = insideOf(state);
     },
   };
   await propagate({ stepper, psi, steps }, [watch], {
@@ -66,18 +79,26 @@ export async function runToEnd(
   const parts = shares(psi, grid, division);
   const beside = tails(psi, grid, division);
   const total = parts.left + parts.inside + parts.right;
+  const inside = insideOf(psi);
   const transmitted = through(parts);
   return {
     transmitted: transmitted / total,
-    reflected: (from.direction > 0 ? parts.left : parts.right) / total,
-    inside: parts.inside / total,
+    // What is still on the foot of the near flank is on its way back.
+    reflected: ((from.direction > 0 ? parts.left : parts.right) + parts.inside - inside) / total,
+    inside: inside / total,
     insideBefore: insideBefore / total,
-    unfinished:
-      (parts.inside + beside.left + beside.right + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
+    unfinished: (inside + beside.left + beside.right + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
     drift: Math.abs(total - start) / start,
     sampling: Math.abs(start - 1),
     transmissionAt: (energy) => transmissionAt(energy, psi, stepper, from, packet, division),
   };
+}
+
+/** The structure without the foot of its near flank, nm. */
+function footOf(potential: Potential, direction: 1 | -1): readonly [number, number] {
+  const [left, right] = core(potential);
+  const end = footEnd(potential, direction);
+  return direction > 0 ? [end, right] : [left, end];
 }
 
 /**
