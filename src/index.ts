@@ -55,14 +55,9 @@ export { type Estimate, estimate } from "./studies/estimate.js";
 export { type History, type HistoryOptions, history } from "./studies/history.js";
 export { DesignLimitError } from "./studies/limits.js";
 export { type PreparedRun, type PrepareOptions, prepare } from "./studies/prepare.js";
-export {
-  type Spectrum,
-  type SpectrumMethod,
-  type SpectrumOptions,
-  type SpectrumRow,
-  spectrum,
-} from "./studies/spectrum.js";
+export { type Spectrum, type SpectrumOptions, spectrum } from "./studies/spectrum.js";
 export { evenEnergies, packetEnergies } from "./studies/spectrum-energies.js";
+export type { SpectrumMethod, SpectrumRow } from "./studies/spectrum-row.js";
 export type { Bounded } from "./units/bounded.js";
 
 // Quantities, and numbers with their bounds.

@@ -1,5 +1,6 @@
 import type { Check } from "../studies/calculation.js";
-import type { Spectrum, SpectrumRow } from "../studies/spectrum.js";
+import type { Spectrum } from "../studies/spectrum.js";
+import type { SpectrumRow } from "../studies/spectrum-row.js";
 import { concise } from "../units/concise.js";
 import { formatQuantity } from "../units/quantity.js";
 import { bold, COLUMNS, table, wrap } from "./terminal.js";

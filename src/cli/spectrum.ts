@@ -1,5 +1,5 @@
 import { Command, Option } from "commander";
-import type { SpectrumMethod } from "../studies/spectrum.js";
+import type { SpectrumMethod } from "../studies/spectrum-row.js";
 import { addDesignFlags, type DesignFlags, openDesign, placingLimits } from "./design-flags.js";
 import { EXIT } from "./exit-codes.js";
 import { type FigureFlags, figureSizeOf } from "./figure-flags.js";

@@ -1,4 +1,4 @@
-import type { SpectrumRow } from "../studies/spectrum.js";
+import type { SpectrumRow } from "../studies/spectrum-row.js";
 import type { Bounded } from "../units/bounded.js";
 
 /** One point of a curve on paper, with the ends of its bound. */

@@ -1,4 +1,5 @@
-import type { Spectrum, SpectrumRow } from "../studies/spectrum.js";
+import type { Spectrum } from "../studies/spectrum.js";
+import type { SpectrumRow } from "../studies/spectrum-row.js";
 import { bottomAxis, sideRoom } from "./axis.js";
 import { type EnergyAxis, energyAxis } from "./energy-axis.js";
 import { type Figure, figureSize } from "./figure.js";
@@ -84,9 +85,10 @@ function drawn(
   const strip = resonances.length > 0 ? STRIP * em : 0;
   const titleLines = titleLinesOf(options.title, size.width, em);
   // Axes and legend need each other's size: heights from a guess decide the ticks, whose labels decide the width.
-  const guess = panelsOf(spectrum, options, energyAxis(from, to, size.width, em), 0.25 * size.height, em);
+  const wide = energyAxis(from, to, 0.85 * size.width, em);
+  const guess = panelsOf(spectrum, options, wide, 0.25 * size.height, em);
   const leftRoom = sideRoom([guess.linear.axis, guess.log.axis], em);
-  const horizontal = panelWidth(size.width, leftRoom, em);
+  const horizontal = panelWidth(size.width, leftRoom, wide.axis, em);
   const energies = energyAxis(from, to, horizontal.width, em);
   const hasWeight = shows(weight, from, to);
   const parts = {

@@ -1,8 +1,8 @@
-import { bottomRoom } from "./axis.js";
+import { type Axis, bottomRoom } from "./axis.js";
 import { type Box, snapBox } from "./figure.js";
 import type { Legend } from "./legend.js";
 import { textAt, textWidth, wrapText } from "./text.js";
-import { INK, TITLE_TEXT } from "./theme.js";
+import { INK, TICK_TEXT, TITLE_TEXT } from "./theme.js";
 
 export interface SpectrumBoxes {
   readonly linear: Box;
@@ -12,16 +12,23 @@ export interface SpectrumBoxes {
   readonly titleLines: readonly string[];
 }
 
-/** Space around the page, between the panels and right of them, in ems; half of the last tick's label stands in the last. */
+/** Space around the page, between the panels and right of them, in ems; the last one at least: half of a tick's label stands there. */
 const MARGIN = 0.5;
 const PANEL_GAP = 0.9;
 const RIGHT_ROOM = 1.3;
 const TITLE_LINE = 1.3;
 
 /** The horizontal extent of both panels, which is known before their heights are. */
-export function panelWidth(page: number, leftRoom: number, em: number): { left: number; width: number } {
+export function panelWidth(
+  page: number,
+  leftRoom: number,
+  energies: Axis,
+  em: number,
+): { left: number; width: number } {
   const left = MARGIN * em + leftRoom;
-  return { left, width: page - left - RIGHT_ROOM * em };
+  const widest = Math.max(0, ...energies.ticks.map(({ label }) => textWidth(label, TICK_TEXT * em)));
+  const right = Math.max(RIGHT_ROOM * em, widest / 2 + MARGIN * em);
+  return { left, width: page - left - right };
 }
 
 /** The title in lines. */

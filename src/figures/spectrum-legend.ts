@@ -1,4 +1,4 @@
-import type { Spectrum } from "../studies/spectrum.js";
+import type { SpectrumMethod } from "../studies/spectrum-row.js";
 import { axisUnit } from "./axis-unit.js";
 import type { EnergyAxis } from "./energy-axis.js";
 import type { LegendEntry } from "./legend.js";
@@ -12,7 +12,7 @@ import { labelNumber } from "./ticks.js";
 
 /** What stands in the figure and has to be explained. */
 export interface LegendParts {
-  readonly method: Spectrum["method"];
+  readonly method: SpectrumMethod;
   readonly curves: readonly Curve[];
   readonly bounds: boolean;
   readonly weight: boolean;

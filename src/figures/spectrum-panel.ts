@@ -1,5 +1,5 @@
 import { area, line } from "d3-shape";
-import type { SpectrumRow } from "../studies/spectrum.js";
+import type { SpectrumRow } from "../studies/spectrum-row.js";
 import type { Bounded } from "../units/bounded.js";
 import { type Axis, frame, sideAxis } from "./axis.js";
 import type { EnergyAxis } from "./energy-axis.js";

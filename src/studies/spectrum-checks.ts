@@ -1,7 +1,7 @@
 import { formatQuantity } from "../units/quantity.js";
 import { atMost, type Check } from "./calculation.js";
 import { relativeError } from "./common-checks.js";
-import type { SpectrumRow } from "./spectrum.js";
+import type { SpectrumRow } from "./spectrum-row.js";
 
 /** What T + R may miss of 1 beyond the bounds of both: rounding of the sum itself. */
 const SUM_ROUNDING = 4 * Number.EPSILON;

@@ -1,7 +1,7 @@
 import type { Design } from "../problem/design.js";
 import { formatQuantity } from "../units/quantity.js";
 import { isForced } from "./forced.js";
-import type { SpectrumMethod, SpectrumRow } from "./spectrum.js";
+import type { SpectrumMethod, SpectrumRow } from "./spectrum-row.js";
 
 /** What a reader of a spectrum should know, in sentences. */
 export function spectrumNotes(

@@ -1,4 +1,4 @@
-import type { SpectrumRow } from "./spectrum.js";
+import type { SpectrumRow } from "./spectrum-row.js";
 
 /** A resonance: energy above the left level and full width at half maximum, eV. */
 export interface Resonance {
@@ -38,10 +38,13 @@ export function peaks(
 ): Resonance[] {
   const found: Resonance[] = [];
   let looked = 0;
-  for (let n = 1; n + 1 < rows.length && looked < MOST_PEAKS; n++) {
-    const [before, here, after] = [n - 1, n, n + 1].map((i) => rows[i]);
-    const { value } = here.transmission;
-    if (!(value > before.transmission.value && value >= after.transmission.value)) continue;
+  const last = rows.length - 1;
+  for (let n = 0; n <= last && last > 0 && looked < MOST_PEAKS; n++) {
+    // A peak may also stand beside the first row or the last; if that row itself is the highest, T rises beyond it and it is none.
+    const [before, after] = [rows[Math.max(0, n - 1)], rows[Math.min(last, n + 1)]];
+    const { value } = rows[n].transmission;
+    if ((n > 0 && !(value > before.transmission.value)) || (n < last && !(value >= after.transmission.value)))
+      continue;
     looked++;
     const energy = maximum(transmissionAt, before.energy, after.energy);
     const step = FIRST_STEP * (after.energy - before.energy);

@@ -2,7 +2,6 @@ import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
 import { stationaryRefusal } from "../stationary/refusal.js";
 import { prepareScattering, type Scatterer } from "../stationary/scattering.js";
 import { stepperNamed } from "../steppers/registry.js";
-import type { Bounded } from "../units/bounded.js";
 import type { Check, StudyOptions } from "./calculation.js";
 import { DesignLimitError } from "./limits.js";
 import { packetSpectrum, type SpectrumPacket } from "./packet-spectrum.js";
@@ -10,22 +9,11 @@ import { spectrumChecks } from "./spectrum-checks.js";
 import { checkEnergies, threshold } from "./spectrum-energies.js";
 import { spectrumNotes } from "./spectrum-notes.js";
 import { peaks, type Resonance } from "./spectrum-resonances.js";
-
-/** How a spectrum is computed: from wavepackets in time, or by the stationary witness. */
-export const SPECTRUM_METHODS = ["packet", "stationary"] as const;
-export type SpectrumMethod = (typeof SPECTRUM_METHODS)[number];
+import { SPECTRUM_METHODS, type SpectrumMethod, type SpectrumRow } from "./spectrum-row.js";
 
 export interface SpectrumOptions extends StudyOptions {
   /** Default "packet". */
   readonly method?: SpectrumMethod;
-}
-
-/** Transmission and reflection of a plane wave at one energy. */
-export interface SpectrumRow {
-  /** eV above the left level. */
-  readonly energy: number;
-  readonly transmission: Bounded;
-  readonly reflection: Bounded;
 }
 
 /** Transmission against energy, and what the verdict rests on. */

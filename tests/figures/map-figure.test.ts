@@ -4,13 +4,10 @@ import { mapFigure } from "../../src/figures/map-figure.js";
 import { escapeXml } from "../../src/figures/svg.js";
 import { textWidth, wrapText } from "../../src/figures/text.js";
 import { inventedMap, inventedProfile, smoothProfile } from "./invented.js";
+import { textBoxes, texts } from "./read-figure.js";
 
 const small = inventedMap(60, 40);
 const barrier = inventedProfile([-5, -2, 2, 5], [0.3, 0, 0.3], { masses: [1.4, 1, 1.4] });
-
-/** All texts of a figure, in order, with the tags inside removed. */
-const texts = (svg: string): string[] =>
-  [...svg.matchAll(/<text[^>]*>(.*?)<\/text>/g)].map((match) => match[1].replace(/<[^>]*>/g, ""));
 
 /** A strict reading of XML's bones: tags nest, attributes are quoted, no bare signs. Returns the names of elements. */
 function readXml(text: string): string[] {
@@ -161,20 +158,6 @@ describe("mapFigure", () => {
     expect(Buffer.compare(first.raster?.data as Uint8Array, second.raster?.data as Uint8Array)).toBe(0);
   });
 });
-
-/** Rough boxes of all texts, from the font's own widths: capitals' height above the baseline, descenders left out. */
-function textBoxes(content: string) {
-  return [...content.matchAll(/<text ([^>]*)>(.*?)<\/text>/g)].map(([, attributes, inner]) => {
-    const read = (name: string) => attributes.match(new RegExp(`(?:^| )${name}="([^"]*)"`))?.[1];
-    const text = inner.replace(/<[^>]*>/g, "").replace(/&\w+;/g, "&");
-    const [x, y, size] = ["x", "y", "font-size"].map((name) => Number(read(name)));
-    const length = textWidth(text, size, read("font-weight") === "bold" ? "bold" : "regular");
-    const before = { start: 0, middle: length / 2, end: length }[read("text-anchor") ?? "start"] as number;
-    return read("transform")
-      ? { text, left: x - 0.73 * size, right: x, top: y - (length - before), bottom: y + before }
-      : { text, left: x - before, right: x - before + length, top: y - 0.73 * size, bottom: y };
-  });
-}
 
 describe("figureToSvg", () => {
   it("is well-formed whatever the title", () => {
