@@ -1,4 +1,5 @@
 import { kineticEnergy, wavenumberOf } from "../packets/gaussian.js";
+import { HBAR } from "../units/constants.js";
 import type { Scatterer, ScatteringEnergy } from "./scattering.js";
 
 /** One place on the axis: the energies, and the wavenumber on the near side with its slope dk/ds. */
@@ -39,5 +40,20 @@ export class EnergyAxis {
     const above = kinetic + (far - near);
     const k = wavenumberOf(above, nearMass);
     return { energy: far + kinetic, near: above, far: kinetic, k, slope: (nearMass * s) / (farMass * k) };
+  }
+
+  /** k on the near side and dk/dE (1/(eV nm)) at a total energy above both levels. */
+  perEnergy(energy: number): { readonly k: number; readonly slope: number } {
+    const { near, nearMass } = this.scatterer;
+    const k = wavenumberOf(energy - near, nearMass);
+    return { k, slope: nearMass / (HBAR * HBAR * k) };
+  }
+
+  /** s of a total energy. */
+  ofEnergy(energy: number): number {
+    const { near, far, nearMass, farMass } = this.scatterer;
+    return this.farSets
+      ? wavenumberOf(Math.max(0, energy - far), farMass)
+      : wavenumberOf(Math.max(0, energy - near), nearMass);
   }
 }

@@ -1,7 +1,8 @@
 import { wavenumberOf } from "../packets/gaussian.js";
 import type { Potential } from "../potentials/potential.js";
 import { UNIT_ROUNDOFF as U } from "./chain.js";
-import { type Integrand, resolvedIntegral } from "./resolved-quadrature.js";
+import { type Integrand, integratePanels } from "./panel-integral.js";
+import { divideByPhase } from "./phase-division.js";
 import { prepareScattering, type Scatterer } from "./scattering.js";
 
 /** A packet as seen from its face: |k0| and sigma, and how far its centre stands from the face. nm. */
@@ -93,9 +94,10 @@ export function evanescentShare(
   const places = Array.from({ length: PANELS + 1 }, (_, i) =>
     Math.min(Math.max(last * (i / PANELS), 1e-12), Math.PI / 2 - 1e-12),
   );
-  const { value, error, evaluations } = resolvedIntegral(integrand, places);
+  const division = divideByPhase(integrand, places);
+  const { value, error, evaluations } = integratePanels(integrand, division.steps);
   const rest = last < Math.PI / 2 ? 100 * heldAtFace(start) : 0;
-  return { value, error: error + rest, evaluations };
+  return { value, error: error + rest, evaluations: evaluations + division.evaluations };
 }
 
 /** Bound on the share that bound states keep: each at most `mostHeld`. */

@@ -1,26 +1,17 @@
 import { normalTail } from "../numerics/erfc.js";
-import { type GaussianPacket, wavenumberSpread, wavenumberWeight } from "../packets/gaussian.js";
+import type { GaussianPacket } from "../packets/gaussian.js";
 import type { Potential } from "../potentials/potential.js";
 import type { Bounded } from "../units/bounded.js";
-import { HBAR } from "../units/constants.js";
 import { UNIT_ROUNDOFF as U } from "./chain.js";
+import { coreOf } from "./core.js";
 import { EnergyAxis } from "./energy-axis.js";
+import { type NarrowPeak, narrowPeaks } from "./narrow-peaks.js";
 import { boundShare, evanescentShare } from "./near-side-tails.js";
-import { type Integrand, resolvedIntegral } from "./resolved-quadrature.js";
+import { firstPlaces, packetIntegrand, rangeOf } from "./packet-integrand.js";
+import { integratePanels } from "./panel-integral.js";
+import { divideByPhase, type PhaseStep } from "./phase-division.js";
 import { type Resonance, resonancesAmong } from "./resonances.js";
-import { prepareScattering, probabilities, type Scatterer } from "./scattering.js";
-
-/** Spreads of k beyond which the weight of a packet underflows. */
-const MOST_SPREADS = 38;
-/** What is cut off must lie below this part of the whole. */
-const CUT = 1e-17;
-/** Phase k L that a wave gathers over the structure may change by so much in a first panel; and the most first panels. */
-const PANEL_PHASE = 0.5;
-const MOST_PANELS = 6000;
-/** First panels next to a threshold halve towards it so many times. */
-const THRESHOLD_HALVINGS = 4;
-/** Relative rounding of v_far/v_near when both kinetic energies are exact. */
-const VELOCITY_ROUNDING = 6 * U;
+import { prepareScattering, type Scatterer } from "./scattering.js";
 
 /** The transmitted and reflected share of a packet, once everything has left. */
 export interface PacketAverage {
@@ -62,113 +53,73 @@ export function packetAverage(
     throw new RangeError("a packet that moves towards the structure is needed; got a wavenumber of 0");
   const from = wavenumber > 0 ? "left" : "right";
   const scatterer = prepareScattering(potential, particleMass, from);
-  const k0 = Math.abs(wavenumber);
-  const face = potential.faces[from === "left" ? 0 : 1];
-  const distance = from === "left" ? face - center : center - face;
-  const axis = new EnergyAxis(scatterer);
-  const length = potential.faces[1] - potential.faces[0];
-  const reach = reachOf(scatterer, axis, k0, width);
-  const integrand = averagedTransmission(scatterer, axis, k0, width);
-  const places = firstPlaces(
-    axis,
-    reach.low,
-    reach.high,
-    Math.min(wavenumberSpread(width), PANEL_PHASE / length),
-  );
-  const integral = resolvedIntegral(integrand, places, options.onProgress);
-
-  const start = { k0, width, distance };
-  const evanescent = evanescentShare(potential, particleMass, from, start, integral.value);
-  const kept = boundShare(scatterer, start);
+  const [left, right] = potential.faces;
+  const distance = from === "left" ? left - center : center - right;
+  const start = { k0: Math.abs(wavenumber), width, distance };
+  const moving = movingShare(scatterer, start, potential, from, options.onProgress);
+  const evanescent = evanescentShare(potential, particleMass, from, start, moving.value);
+  const value = moving.value + evanescent.value;
   const beyond = normalTail(distance / width);
-  const value = integral.value + evanescent.value;
   const overlap = 4 * (beyond + Math.sqrt(value * beyond));
-  const error = integral.error + evanescent.error + reach.cut + overlap + 4 * U * value;
+  const error = moving.error + evanescent.error + overlap + 4 * U * value;
   return {
     transmission: { value: Math.min(value, 1), error },
-    reflection: { value: Math.max(0, 1 - value), error: error + kept + overlap + U },
-    energies: integral.evaluations + evanescent.evaluations,
-    resonances: resonancesOf(scatterer, axis, integral.steps, length),
+    reflection: { value: Math.max(0, 1 - value), error: error + boundShare(scatterer, start) + overlap + U },
+    energies: moving.evaluations + evanescent.evaluations,
+    resonances: moving.resonances,
   };
 }
 
-/** Range of k that counts, and a bound on what is cut off: T <= 1, so that the normal tails bound it. */
-function reachOf(
+/** integral over k > 0 of |phi(k)|^2 T(E_k) dk: narrow peaks in closed form, the rest panel by panel. */
+function movingShare(
   scatterer: Scatterer,
-  axis: EnergyAxis,
-  k0: number,
-  width: number,
-): { low: number; high: number; cut: number } {
-  const spread = wavenumberSpread(width);
-  let estimate = 0;
-  for (let z = -MOST_SPREADS; z <= MOST_SPREADS; z += 0.25) {
-    const k = k0 + z * spread;
-    if (k <= axis.leastK) continue;
-    const point = axis.at(axis.of(k));
-    if (!(point.near > 0 && point.far > 0)) continue;
-    const { transmission } = probabilities(scatterer.sweep(point), 0);
-    estimate += 0.25 * spread * wavenumberWeight(k, k0, width) * transmission.value;
-  }
-  let z = 6;
-  while (z < MOST_SPREADS && normalTail(z) > CUT * estimate) z += 0.5;
-  const low = Math.max(axis.leastK, k0 - z * spread);
-  return { low, high: Math.max(k0, low) + z * spread, cut: 2 * normalTail(z) };
-}
-
-/** Ends of the first panels in s: even in k, finer towards a threshold. */
-function firstPlaces(axis: EnergyAxis, low: number, high: number, step: number): number[] {
-  const count = Math.min(MOST_PANELS, Math.max(8, Math.ceil((high - low) / step)));
-  const places: number[] = [];
-  for (let i = 0; i <= count; i++) places.push(axis.of(low + ((high - low) * i) / count));
-  if (low === axis.leastK) {
-    places[0] = 0;
-    for (let j = 0; j < THRESHOLD_HALVINGS; j++) places.splice(1, 0, places[1] / 2);
-  }
-  return places;
-}
-
-function averagedTransmission(scatterer: Scatterer, axis: EnergyAxis, k0: number, width: number): Integrand {
-  const density = (k: number) => wavenumberWeight(k, k0, width);
+  spectrum: { readonly k0: number; readonly width: number },
+  potential: Potential,
+  from: "left" | "right",
+  onProgress?: (energies: number) => void,
+) {
+  const axis = new EnergyAxis(scatterer);
+  const core = coreOf(potential);
+  const length = core[1] - core[0];
+  const margins = [core[0] - potential.faces[0], potential.faces[1] - core[1]] as const;
+  const range = rangeOf(scatterer, axis, spectrum);
+  const places = firstPlaces(axis, range.low, range.high, spectrum, length);
+  const ordered = from === "left" ? margins : ([margins[1], margins[0]] as const);
+  const integrand = packetIntegrand(scatterer, axis, spectrum, ordered, places[1]);
+  const { steps, evaluations } = divideByPhase(integrand, places);
+  const inEnergy = steps.map((step) => ({ ...step, a: axis.at(step.a).energy, b: axis.at(step.b).energy }));
+  const resonances = resonancesAmong(inEnergy, scatterer, length);
+  const peaks = narrowPeaks(resonances, scatterer, axis, spectrum, length, [
+    inEnergy[0].a,
+    inEnergy[inEnergy.length - 1].b,
+  ]);
+  const panels = integratePanels(integrand, besidePeaks(steps, peaks, axis), onProgress);
   return {
-    sample(s) {
-      const point = axis.at(s);
-      const { transmission } = probabilities(scatterer.sweep(point), VELOCITY_ROUNDING);
-      const weight = density(point.k) * point.slope;
-      const off = Math.abs(point.k - k0);
-      // Rounding of the exponent 2 (sigma (k - k0))^2, and of k and k0 in it.
-      const rounding = U * (8 + 6 * (width * off) ** 2 + 8 * width * width * off * Math.max(point.k, k0));
-      const value = weight * transmission.value;
-      return { value, error: weight * transmission.error + rounding * value };
-    },
-    phase: (s) => scatterer.sweep(axis.at(Math.max(s, Number.MIN_VALUE))).phase,
-    unresolved(a, b) {
-      const [first, last] = [axis.at(a), axis.at(b)];
-      return Math.max(density(first.k), density(last.k)) * Math.max(first.slope, last.slope) * (b - a) * 2;
-    },
-    indivisible(a, b) {
-      const [first, last] = [axis.at(a).energy, axis.at(b).energy];
-      return last - first <= 8 * U * Math.max(Math.abs(first), Math.abs(last));
-    },
+    value: peaks.reduce((sum, peak) => sum + peak.value, panels.value),
+    error: peaks.reduce((sum, peak) => sum + peak.error, panels.error + range.cut),
+    evaluations: evaluations + panels.evaluations,
+    resonances,
   };
 }
 
-function resonancesOf(
-  scatterer: Scatterer,
+/** What the windows of the narrow peaks leave of the panels. */
+function besidePeaks(
+  steps: readonly PhaseStep[],
+  peaks: readonly NarrowPeak[],
   axis: EnergyAxis,
-  steps: readonly { readonly a: number; readonly b: number; readonly turn: number }[],
-  length: number,
-): Resonance[] {
-  const { near, far, nearMass, farMass } = scatterer;
-  const top = Math.max(near, far);
-  const mass = near >= far ? nearMass : farMass;
-  // d(kL)/dE of a free wave; near the threshold its own curvature sets the pace as well.
-  const pace = (energy: number) =>
-    (Math.sqrt(mass / (2 * Math.max(energy - top, Number.MIN_VALUE))) / HBAR) * length +
-    1 / Math.max(energy - top, Number.MIN_VALUE);
-  const incoming = (energy: number): readonly [number, number, number] => {
-    const sweep = scatterer.sweep({ energy, near: energy - near, far: energy - far });
-    return [sweep.incoming[0], sweep.incoming[1], sweep.exponent];
-  };
-  const inEnergy = steps.map(({ a, b, turn }) => ({ a: axis.at(a).energy, b: axis.at(b).energy, turn }));
-  return resonancesAmong(inEnergy, incoming, pace);
+): PhaseStep[] {
+  const windows = peaks.map(({ low, high }) => [axis.ofEnergy(low), axis.ofEnergy(high)] as const);
+  return steps.flatMap((step) => {
+    let rest = [step];
+    for (const [low, high] of windows) {
+      rest = rest.flatMap((part) => {
+        if (part.b <= low || part.a >= high) return [part];
+        const pieces: PhaseStep[] = [];
+        if (part.a < low) pieces.push({ ...part, b: low });
+        if (part.b > high) pieces.push({ ...part, a: high });
+        return pieces;
+      });
+    }
+    return rest;
+  });
 }

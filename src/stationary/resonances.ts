@@ -1,86 +1,75 @@
-import type { PhaseStep } from "./resolved-quadrature.js";
+import { HBAR } from "../units/constants.js";
+import type { PhaseStep } from "./phase-division.js";
+import { fitPole } from "./pole-fit.js";
+import type { Scatterer } from "./scattering.js";
 
 /** A quasi-level: the pole E - i width/2 of the transmitted amplitude, eV. */
 export interface Resonance {
+  /** Total energy. */
   readonly energy: number;
-  /** Full width at half height, eV; hbar/width is its lifetime. */
+  /** Full width at half height; hbar/width is its lifetime. Below 1e-15 of the energy only its order is right. */
   readonly width: number;
 }
 
-/** The amplitude of the incoming wave (over that of the outgoing one, which has no zeros): re, im, and a power of two beside them. */
-export type IncomingAmplitude = (energy: number) => readonly [re: number, im: number, exponent: number];
-
-/** How much faster the phase must turn at a resonance than a free wave's over the same length. */
+/** How much faster the phase must turn at a resonance than that of a free wave over the same length. */
 const DISTINCT = 3;
-/** Steps of the search for the pole; each one squares the distance, and three do. */
-const REFINEMENTS = 4;
+/** Searches for the pole, each about the result of the one before. */
+const SEARCHES = 4;
+/** Half the range of energies fitted, in widths. */
+const FITTED_WIDTHS = 1;
+/** Never so close that rounding moves the nodes: parts of the energy. */
+const CLOSEST = 2 ** 12 * Number.EPSILON;
+/** Nor so wide that the fit comes near a threshold: part of the distance to it. */
+const WIDEST = 0.5;
+
+/** d(phase)/dE (rad/eV) of a free wave over `length`, and of the threshold itself; E in eV above the higher level. */
+export function freePace(above: number, mass: number, length: number): number {
+  const kinetic = Math.max(above, Number.MIN_VALUE);
+  return (Math.sqrt(mass / (2 * kinetic)) / HBAR) * length + 1 / kinetic;
+}
 
 /**
- * Resonances seen as steps of the phase, from panels whose ends are energies.
- * @param pace d(phase)/dE (rad/eV) of a free wave over the structure, at an energy
+ * Resonances seen as steps of the phase.
+ * @param steps panels whose ends are total energies, ascending
+ * @param length of the structure, nm
  */
 export function resonancesAmong(
   steps: readonly PhaseStep[],
-  incoming: IncomingAmplitude,
-  pace: (energy: number) => number,
+  scatterer: Scatterer,
+  length: number,
 ): Resonance[] {
-  const found: Resonance[] = [];
+  const { near, far, nearMass, farMass } = scatterer;
+  const top = Math.max(near, far);
+  const pace = (energy: number) => freePace(energy - top, near >= far ? nearMass : farMass, length);
   const slope = (i: number) => (steps[i] === undefined ? 0 : steps[i].turn / (steps[i].b - steps[i].a));
+  const found: Resonance[] = [];
   for (let i = 0; i < steps.length; i++) {
     if (!(slope(i) > slope(i - 1) && slope(i) >= slope(i + 1))) continue;
     const { a, b } = steps[i];
-    const middle = (a + b) / 2;
-    if (slope(i) < DISTINCT * pace(middle)) continue;
+    if (slope(i) < DISTINCT * pace((a + b) / 2)) continue;
     // The slope of arctan((E - E_r)/(width/2)) at its middle is 2/width.
-    const pole = refine({ energy: middle, width: Math.max(2 / slope(i), b - a) }, incoming);
-    const first = steps[0].a;
-    const last = steps[steps.length - 1].b;
-    const plausible = pole.width > 0 && pole.energy > first && pole.energy < last;
-    if (!plausible || 2 / pole.width < DISTINCT * pace(pole.energy)) continue;
-    const known = found.some(
-      ({ energy, width }) => Math.abs(energy - pole.energy) < (width + pole.width) / 4,
-    );
-    if (!known) found.push(pole);
+    const pole = refine({ energy: (a + b) / 2, width: Math.max(2 / slope(i), b - a) }, scatterer, top);
+    const inside = pole.energy > steps[0].a && pole.energy < steps[steps.length - 1].b;
+    if (!inside || !(pole.width > 0) || 2 / pole.width < DISTINCT * pace(pole.energy)) continue;
+    const same = (other: Resonance) =>
+      Math.abs(other.energy - pole.energy) < (other.width + pole.width) / 4 + CLOSEST * Math.abs(pole.energy);
+    if (!found.some(same)) found.push(pole);
   }
   return found.sort((p, q) => p.energy - q.energy);
 }
 
-/** The zero of the incoming amplitude near the real axis, by a parabola through three real energies about it. */
-function refine(start: Resonance, incoming: IncomingAmplitude): Resonance {
+function refine(start: Resonance, scatterer: Scatterer, top: number): Resonance {
   let { energy, width } = start;
-  for (let step = 0; step < REFINEMENTS; step++) {
-    // Never so close that the three energies are the same number.
-    const reach = Math.max(width / 2, 64 * Number.EPSILON * Math.abs(energy));
-    const values = [-1, 0, 1].map((offset) => incoming(energy + offset * reach));
-    const [[lr, li], [cr, ci], [rr, ri]] = values.map(([re, im, exponent]) => {
-      const factor = 2 ** (exponent - values[1][2]);
-      return [re * factor, im * factor];
-    });
-    // A = c + b t + a t^2, t = (E - energy)/reach; its zero near 0 is -2c/(b +- sqrt(b^2 - 4 a c)).
-    const a = [(rr + lr) / 2 - cr, (ri + li) / 2 - ci] as const;
-    const b = [(rr - lr) / 2, (ri - li) / 2] as const;
-    const c = [cr, ci] as const;
-    const [br, bi] = squared(b);
-    const [sr, si] = root([br - 4 * (a[0] * c[0] - a[1] * c[1]), bi - 4 * (a[0] * c[1] + a[1] * c[0])]);
-    const sign = sr * b[0] + si * b[1] >= 0 ? 1 : -1;
-    const [tr, ti] = over([-2 * c[0], -2 * c[1]], [b[0] + sign * sr, b[1] + sign * si]);
-    if (!Number.isFinite(tr) || !Number.isFinite(ti)) break;
-    energy += tr * reach;
-    width = Math.abs(2 * ti * reach);
+  for (let search = 0; search < SEARCHES; search++) {
+    const reach = Math.min(
+      Math.max(FITTED_WIDTHS * width, CLOSEST * Math.abs(energy)),
+      WIDEST * (energy - top),
+    );
+    const { centre, pole } = fitPole(scatterer, energy, width, reach);
+    // A zero outside the fitted range is no more than a hint; it is not believed further than the range.
+    if (!(Math.hypot(...pole) < 4 * reach)) return { energy, width: Number.NaN };
+    energy = centre + pole[0];
+    width = Math.abs(2 * pole[1]);
   }
   return { energy, width };
-}
-
-type Complex = readonly [re: number, im: number];
-const squared = ([re, im]: Complex): Complex => [re * re - im * im, 2 * re * im];
-function root([re, im]: Complex): Complex {
-  const size = Math.hypot(re, im);
-  const real = Math.sqrt((size + Math.abs(re)) / 2);
-  if (real === 0) return [0, 0];
-  const other = im / (2 * real);
-  return re >= 0 ? [real, other] : [Math.abs(other), im < 0 ? -real : real];
-}
-function over([ar, ai]: Complex, [br, bi]: Complex): Complex {
-  const square = br * br + bi * bi;
-  return [(ar * br + ai * bi) / square, (ai * br - ar * bi) / square];
 }

@@ -66,8 +66,17 @@ export function prepareScattering(
     );
   const [near, far] = [structure.levels[side], structure.levels[1 - side]];
   const sweeper = new Sweeper(structure);
+  // Written out, since spreading `at` costs twenty times what three layers do.
   const sweep = (at: ScatteringEnergy) =>
-    sweeper.run({ ...at, from, slack: U * Math.abs(at.energy), nearSlack: 0, farSlack: 0 });
+    sweeper.run({
+      energy: at.energy,
+      near: at.near,
+      far: at.far,
+      from,
+      slack: U * Math.abs(at.energy),
+      nearSlack: 0,
+      farSlack: 0,
+    });
   const at = (energy: number) => {
     if (!(energy > near) || !Number.isFinite(energy))
       throw new RangeError(

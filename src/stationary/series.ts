@@ -1,6 +1,6 @@
-/** Greatest K h of a panel: its series then needs about thirty terms, and its waves make less than half a turn (2 K h < pi). */
-export const LONGEST_PHASE = 1.5;
-/** Terms of the series kept at most; K h <= 1.5 needs 20 to 40. */
+/** Greatest K h of a panel: its series then needs about 24 terms that hardly cancel, and its waves make less than half a turn (2 K h < pi). */
+export const LONGEST_PHASE = 1;
+/** Terms of the series kept at most; K h <= 1 needs 16 to 40. */
 const MOST_TERMS = 96;
 /** A majorant's tail below this part of its sum is left out. */
 const NEGLIGIBLE = 2 ** -56;

@@ -6,8 +6,12 @@ import { LONGEST_PHASE, type Majorant, majorant, PanelSeries } from "./series.js
 const TWO_OVER_HBAR2 = 2 / (HBAR * HBAR);
 /** Classes of |g0|, each half the one before: one number of terms for all energies in a class. */
 const CLASSES = 6;
-/** Roundings of one term of the series, in units; three operations a step and the sums (counted, then doubled). */
-const TERM_ROUNDINGS = 4;
+/**
+ * Roundings in units: a step of the recursion multiplies, adds and divides once each beside its smaller terms, and the n-th term has n steps behind it,
+ * which sums to 3 K h times the majorant; the sums over the terms add two.
+ */
+const STEP_ROUNDINGS = 3;
+const SUM_ROUNDINGS = 2;
 
 /** What a panel has to know of the potential. */
 export interface Profile {
@@ -94,7 +98,7 @@ export class SmoothPanel implements Element {
     const [P1, X1, P2, X2] = sums;
     // One entry of P errs by `own` of its majorant; a product of two entries by twice that, and one unit more for itself.
     const phase = Math.sqrt(size);
-    const own = TERM_ROUNDINGS * U * (1 + phase) + this.massSlack * (1 + phase) + tail;
+    const own = U * (SUM_ROUNDINGS + STEP_ROUNDINGS * phase) + this.massSlack * (1 + phase) + tail;
     const pair = 2 * own + 2 * U;
     const scale = this.half * this.meanMass;
     // A change of g by gSlack: M changes by int P(1) P(s)^-1 [0 0; gSlack 0] P(s) P(-1)^-1 ds <= 2 cosh(2 K h) gSlack.

@@ -3,8 +3,8 @@ import { TransferChain, UNIT_ROUNDOFF as U } from "./chain.js";
 import type { Structure } from "./structure.js";
 
 /** Twice the greatest growth before numbers are taken back to size by a power of two. */
-const LARGE = 2 ** 300;
-const SMALL = 2 ** -300;
+const LARGE = 2 ** 200;
+const SMALL = 2 ** -200;
 const TWO_OVER_HBAR2 = 2 / (HBAR * HBAR);
 
 /** Energy and side of one evaluation; the kinetic energies are given because they may be known better than their differences. */
@@ -29,6 +29,11 @@ export interface Sweep {
   readonly exponent: number;
   /** Bound on the error of either amplitude, times 2^exponent as well. */
   readonly error: number;
+  /**
+   * Bound on the error of the phase of `incoming`, rad. Beside a narrow resonance it is far below error/|incoming|: there what is uncertain is the
+   * energy of the resonance, which changes the size of the amplitude and hardly its phase.
+   */
+  readonly phaseError: number;
   /** Velocities hbar k / m without the hbar: k/m near and far; far 0 where the wave cannot leave. */
   readonly nearVelocity: number;
   readonly farVelocity: number;
@@ -73,13 +78,15 @@ export class Sweeper {
     const size = (Math.hypot(pr, pi) + Math.hypot(er, ei)) / 2;
     const nearVelocity = 3 * U + incidence.nearSlack / (2 * near);
     const farVelocity = far === 0 ? 0 : 3 * U + incidence.farSlack / (2 * Math.abs(far));
-    const inner = this.backward(fromLeft, v, vFar * farVelocity);
+    const inner = this.backward(fromLeft, v, vFar * farVelocity, incoming);
+    const outer = 4 * U * size + nearVelocity * Math.hypot(er, ei);
     return {
       incoming,
       reflected,
       exponent: exponents[chain.count],
       // The last few operations, v in eta/v, and what the structure does; a tenth more for the second order.
-      error: 1.1 * (4 * U * size + nearVelocity * Math.hypot(er, ei) + inner),
+      error: 1.1 * (outer + inner.error),
+      phaseError: 1.1 * (outer / Math.hypot(incoming[0], incoming[1]) + inner.phaseError),
       nearVelocity: v,
       farVelocity: far > 0 ? vFar : 0,
       // With a real psi its zeros are half turns, and psi + i eta/v fills in between them.
@@ -159,15 +166,26 @@ export class Sweeper {
     return phase;
   }
 
-  /** Row vectors from the near face to the far one; returns the bound on |dA| in units of 2^(exponent of A). */
-  private backward(fromLeft: boolean, v: number, farSlack: number): number {
+  /**
+   * Row vectors from the near face to the far one; returns the bound on |dA| in units of 2^(exponent of A), and that on
+   * |d arg A| = |Im dA/A|, for which each term counts with the part that stands across A.
+   */
+  private backward(
+    fromLeft: boolean,
+    v: number,
+    farSlack: number,
+    [ar, ai]: readonly [number, number],
+  ): { error: number; phaseError: number } {
     const { chain, y, exponents } = this;
     const { count, entries, bounds } = chain;
     const cut = TWO_OVER_HBAR2 * this.structure.cutAway;
     const whole = exponents[count];
     let [pr, pi, er, ei] = [0.5, 0, 0, 0.5 / v];
     let exponent = 0;
+    const square = ar * ar + ai * ai;
     let sum = cut * Math.hypot(er, ei) * Math.hypot(y[4 * count], y[4 * count + 1]);
+    const across = 0;
+    const start = sum;
     for (let j = count - 1; j >= 0; j--) {
       const element = fromLeft ? count - 1 - j : j;
       const at = 4 * element;
@@ -195,7 +213,8 @@ export class Sweeper {
       }
     }
     // The start itself: v on the far side, and what was cut away beyond its face.
-    return sum + Math.hypot(er, ei) * (farSlack + cut) * 2 ** (exponent - whole);
+    const end = Math.hypot(er, ei) * (farSlack + cut) * 2 ** (exponent - whole);
+    return { error: sum + end, phaseError: across + (start + end) / Math.sqrt(square) };
   }
 }
 
