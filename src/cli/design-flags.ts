@@ -20,8 +20,11 @@ export interface OpenedDesign {
 
 /** Adds the options of `DesignFlags` to a command. */
 export function addDesignFlags(command: Command): Command {
-  const names = steppers.map(({ name }) => name).join(" or ");
-  const orders = steppers.map(({ name, orders }) => `${orders.join(", ")} (${name})`).join("; ");
+  const names = steppers.map(({ name }) => name).join(", ");
+  const orders = steppers
+    .filter(({ defaultOrder }) => defaultOrder !== "exact")
+    .map(({ name, orders }) => `${orders.join(", ")} (${name})`)
+    .join("; ");
   return command
     .option(
       "--set <PATH=VALUE>",
@@ -32,7 +35,7 @@ export function addDesignFlags(command: Command): Command {
       "--accuracy <R>",
       `relative accuracy of the transmission (default: ${DEFAULT_ACCURACY.toExponential()})`,
     )
-    .option("--stepper <NAME>", `${names} (default: chosen by the design)`)
+    .option("--stepper <NAME>", `one of ${names} (default: chosen by the design)`)
     .option("--order <N>", `order in the time step: ${orders}`);
 }
 

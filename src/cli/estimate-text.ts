@@ -56,11 +56,13 @@ function numerics(answer: Estimate): string {
   return table([
     ["remaining", `${short(answer.remaining)} of the packet, inside the structure or on its way at the end`],
     ["norm drift", short(answer.normDrift)],
-    ["stepper", `${answer.stepper}, order ${answer.order}`],
+    ["stepper", `${answer.stepper}, ${timeOrder(answer)}`],
     ["grid", `${grid.points} points, step ${length(grid.step_nm)}${finest}`],
     ["time", `${time.steps} steps of ${duration(time.step_fs)}, end ${duration(time.end_fs)}`],
   ]);
 }
+
+const timeOrder = ({ order }: Estimate) => (order === "exact" ? "exact in time" : `order ${order}`);
 
 function checkRow({ name, value, limit, passed }: Check): string[] {
   return [passed ? "passed" : "FAILED", name, short(value), `limit ${short(limit)}`];

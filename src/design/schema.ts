@@ -185,7 +185,7 @@ function numericsSchema(): z.ZodType {
 }
 
 function choice(names: readonly string[], description: string) {
-  const list = names.map((name) => `"${name}"`).join(" or ");
+  const list = alternatives(names.map((name) => `"${name}"`));
   const error = ({ input }: Issue) => {
     const meant = typeof input === "string" ? nearest(input, names) : undefined;
     const hint = meant === undefined ? "" : `; did you mean "${meant}"?`;
@@ -197,8 +197,13 @@ function choice(names: readonly string[], description: string) {
   return z.enum(names as [string, ...string[]], { error }).meta({ description });
 }
 
+/** a, b or c */
+function alternatives(names: readonly (string | number)[]): string {
+  return names.join(", ").replace(/, (?=[^,]*$)/, " or ");
+}
+
 function orderSchema() {
-  const list = ORDERS.join(", ").replace(/, (?=[^,]*$)/, " or ");
+  const list = alternatives(ORDERS);
   const error = ({ input }: Issue) =>
     faultText(`an order of ${list} is needed; got ${describeValue(input)}`, "The order in the time step.");
   return z.literal([...ORDERS], { error }).meta({ description: `order in the time step: ${list}` });

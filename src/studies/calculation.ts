@@ -1,3 +1,4 @@
+import type { TimeOrder } from "../steppers/stepper.js";
 import type { Bounded } from "../units/bounded.js";
 
 /** One line of the list that the verdict rests on. */
@@ -13,7 +14,7 @@ export interface Check {
 /** What a transmission calculation hands to the study, whichever stepper it used. */
 export interface Calculation {
   readonly stepper: string;
-  readonly order: number;
+  readonly order: TimeOrder;
   readonly transmission: Bounded;
   readonly reflection: Bounded;
   /** Probability still in the structure, or still to arrive, at the end. */

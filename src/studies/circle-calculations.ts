@@ -1,9 +1,7 @@
 import { circleGrid, refined } from "../grid/circle.js";
 import type { Design } from "../problem/design.js";
-import { splitOperator } from "../steppers/split-operator.js";
-import { splittingOfOrder } from "../steppers/splittings.js";
 import type { RunSummary, StudyOptions } from "./calculation.js";
-import type { CirclePlan } from "./circle-plan.js";
+import { type CirclePlan, pairsPerStep } from "./circle-plan.js";
 import { type Outcome, runToEnd } from "./outcome.js";
 
 /** Whole calculations on circles refined s times in space and t times in time, each done once. */
@@ -19,8 +17,14 @@ export class Calculations {
   ) {}
 
   cost(s: number, t: number): number {
-    const stages = splittingOfOrder(this.plan.order)?.a.length ?? 1;
-    return this.done.has(`${s} ${t}`) ? 0 : 2 * stages * this.steps(t) * this.plan.circle.points * 2 ** s;
+    return this.done.has(`${s} ${t}`) ? 0 : 2 * this.pairs(s, t) * this.plan.circle.points * 2 ** s;
+  }
+
+  /** Pairs of transforms of a whole calculation. */
+  pairs(s: number, t: number): number {
+    const { plan, design } = this;
+    const step = refined(plan.circle, s).step;
+    return this.steps(t) * pairsPerStep(plan.order, design, step, plan.timeStep / 2 ** t);
   }
 
   steps(t: number): number {
@@ -33,14 +37,15 @@ export class Calculations {
     if (known) return known;
     const { plan, design, options } = this;
     const circle = refined(plan.circle, s);
-    options.onProgress?.(`split operator, ${circle.points} points, ${this.steps(t)} steps`);
+    options.onProgress?.(`${plan.definition.name}, ${circle.points} points, ${this.steps(t)} steps`);
     const system = {
       grid: circleGrid(circle),
       potential: design.potential,
       particleMass: design.particleMass,
     };
     this.work += this.cost(s, t);
-    const stepper = splitOperator.prepare(system, plan.timeStep / 2 ** t, plan.order);
+    const order = plan.order === "exact" ? undefined : plan.order;
+    const stepper = plan.definition.prepare(system, plan.timeStep / 2 ** t, order);
     const outcome = await runToEnd(stepper, plan.from, this.steps(t), undefined, options);
     this.done.set(key, outcome);
     return outcome;

@@ -1,15 +1,14 @@
 import { departure } from "../grid/journey.js";
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
-import { stepperNamed } from "../steppers/registry.js";
-import { splitOperator } from "../steppers/split-operator.js";
+import type { StepperDefinition } from "../steppers/stepper.js";
 import type { Bounded } from "../units/bounded.js";
 import { atMost, type Calculation, type Check, type StudyOptions } from "./calculation.js";
-import { chooseStepper } from "./choose-stepper.js";
+import { chosenStepper } from "./choose-stepper.js";
 import { relativeError } from "./common-checks.js";
 import { crankNicolsonTransmission } from "./crank-nicolson-transmission.js";
 import { isForced } from "./forced.js";
 import { DesignLimitError } from "./limits.js";
-import { splitOperatorTransmission } from "./split-operator-transmission.js";
+import { type SplitOperatorOptions, splitOperatorTransmission } from "./split-operator-transmission.js";
 import { tailNote, warningsFor } from "./warnings.js";
 
 /** The answer to a design: probabilities with bounds, and what the verdict rests on. */
@@ -31,22 +30,30 @@ export interface Estimate extends Calculation {
  * @throws DesignLimitError when the design cannot be computed as written; rejects with the signal's reason when stopped
  * Cost: three to five whole calculations. Source: refinement by Richardson extrapolation, see numerics/extrapolation.ts.
  */
-export async function estimate(design: Design, options: StudyOptions = {}): Promise<Estimate> {
+export async function estimate(design: Design, options: SplitOperatorOptions = {}): Promise<Estimate> {
   if (design.potential.confining)
     throw new DesignLimitError(
       "potential",
       `the ${design.potential.shape} potential confines the particle on both sides, so nothing is transmitted; use "postern map" to see the packet move`,
     );
   const accuracy = design.numerics.accuracy ?? DEFAULT_ACCURACY;
-  const name = chooseStepper(design, accuracy);
-  const refusal = stepperNamed(name)?.refusal(design.potential);
-  if (refusal) throw new DesignLimitError("numerics.stepper", refusal);
-  const calculate = name === splitOperator.name ? splitOperatorTransmission : crankNicolsonTransmission;
+  const calculate = calculationBy(chosenStepper(design, accuracy));
   const own = await calculate(design, accuracy, options);
   const calculation = isForced(design.numerics)
     ? await heldAgainstAutomatic(own, design, accuracy, options)
     : own;
   return judged(design, calculation, accuracy);
+}
+
+/** @throws DesignLimitError for a stepper that follows a packet in time but takes no whole calculations that could be refined */
+function calculationBy({ name, grid, defaultOrder }: StepperDefinition) {
+  if (grid === "periodic") return splitOperatorTransmission;
+  if (defaultOrder === "exact")
+    throw new DesignLimitError(
+      "numerics.stepper",
+      `${name} follows a packet in time, as "postern map" shows it; an estimate, which refines its grid, needs crank-nicolson, split-operator or chebyshev`,
+    );
+  return crankNicolsonTransmission;
 }
 
 /**

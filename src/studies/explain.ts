@@ -1,28 +1,15 @@
 import { alignedPoints } from "../grid/aligned.js";
 import type { Departure } from "../grid/journey.js";
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
-import { stepperNamed } from "../steppers/registry.js";
-import { splitOperator } from "../steppers/split-operator.js";
-import { chooseStepper } from "./choose-stepper.js";
+import { type Choice, type Explanation, forcedOr, stepperChoice } from "./choice.js";
+import { chosenStepper } from "./choose-stepper.js";
 import { planCircle } from "./circle-plan.js";
 import { extent, planClosed } from "./closed-plan.js";
 import { REFINEMENTS } from "./crank-nicolson-transmission.js";
-import { DesignLimitError } from "./limits.js";
-import { prepare } from "./prepare.js";
+import { explainRun } from "./explain-run.js";
 import { warningsFor } from "./warnings.js";
 
-/** One choice of the grid builder with its reason. `unit` is "nm", "fs", "1/nm", "eV" or "" . */
-export interface Choice {
-  readonly name: string;
-  readonly value: number | string;
-  readonly unit: "nm" | "fs" | "1/nm" | "eV" | "";
-  readonly why: string;
-}
-
-export interface Explanation {
-  readonly choices: readonly Choice[];
-  readonly warnings: readonly string[];
-}
+export type { Choice, Explanation } from "./choice.js";
 
 /**
  * Every numeric choice of an estimate with its reason, and what would be warned about; computes no transmission.
@@ -30,31 +17,23 @@ export interface Explanation {
  */
 export function explainPlan(design: Design): Explanation {
   const { potential, numerics } = design;
-  if (potential.confining) return explainConfined(design);
+  if (potential.confining)
+    return explainRun(
+      design,
+      `The ${potential.shape} potential confines the particle, so nothing is transmitted: use "postern map", not estimate.`,
+    );
   const accuracy = numerics.accuracy ?? DEFAULT_ACCURACY;
-  const name = chooseStepper(design, accuracy);
-  const refusal = stepperNamed(name)?.refusal(potential);
-  if (refusal) throw new DesignLimitError("numerics.stepper", refusal);
-  const spectral = name === splitOperator.name;
+  const definition = chosenStepper(design, accuracy);
+  const spectral = definition.grid === "periodic";
+  if (!spectral && definition.defaultOrder === "exact")
+    return explainRun(
+      design,
+      `The stepper ${definition.name} follows a packet in time: use "postern map", not estimate.`,
+    );
   const { from } = spectral ? planCircle(design, accuracy) : planClosed(design);
   const numeric = spectral ? circleChoices(design, accuracy) : closedChoices(design);
-  const choices = [stepperChoice(design, name), ...packetChoices(design, from), ...numeric];
+  const choices = [stepperChoice(design, definition), ...packetChoices(design, from), ...numeric];
   return { choices, warnings: warningsFor(design, from) };
-}
-
-function forcedOr(forced: boolean, why: string): string {
-  return forced ? "as the design asks" : why;
-}
-
-function stepperChoice({ numerics, potential }: Design, name: string): Choice {
-  const layered = potential.slopeTransform !== undefined || !potential.uniformMass;
-  const why =
-    name === splitOperator.name
-      ? "V is smooth and the accuracy asked for is high: spectral in space"
-      : layered
-        ? "every interface stands on a node, and the error is a clean series in the spacing squared"
-        : "reaches the accuracy asked for in tens of steps, since T does not depend on the time step";
-  return { name: "stepper", value: name, unit: "", why: forcedOr(numerics.stepper !== undefined, why) };
 }
 
 function packetChoices({ packet }: Design, from: Departure): Choice[] {
@@ -148,15 +127,18 @@ function closedChoices(design: Design): Choice[] {
 function circleChoices(design: Design, accuracy: number): Choice[] {
   const plan = planCircle(design, accuracy);
   const { numerics } = design;
+  const exact = plan.order === "exact";
   return [
     {
       name: "order",
       value: plan.order,
       unit: "",
-      why: forcedOr(
-        numerics.order !== undefined,
-        "least work for this accuracy; where V has jumps the kinetic phase limits the step, not the order",
-      ),
+      why: exact
+        ? "a step of any length makes no error but rounding"
+        : forcedOr(
+            numerics.order !== undefined,
+            "least work for this accuracy; where V has jumps the kinetic phase limits the step, not the order",
+          ),
     },
     {
       name: "time step",
@@ -164,7 +146,9 @@ function circleChoices(design: Design, accuracy: number): Choice[] {
       unit: "fs",
       why: forcedOr(
         plan.forcedTime,
-        "to start from; halved until two whole calculations agree, and where V has jumps until no drift turns the fastest momentum by more than pi",
+        exact
+          ? "of no consequence; so many that the last tenth of the run can be looked at by itself"
+          : "to start from; halved until two whole calculations agree, and where V has jumps until no drift turns the fastest momentum by more than pi",
       ),
     },
     {
@@ -195,38 +179,4 @@ function circleChoices(design: Design, accuracy: number): Choice[] {
       why: "a power of two, for the fast Fourier transform",
     },
   ];
-}
-
-function explainConfined(design: Design): Explanation {
-  const run = prepare(design);
-  const { grid } = run.stepper.system;
-  const n = grid.x.length;
-  return {
-    choices: [
-      stepperChoice(design, run.stepper.definition.name),
-      {
-        name: "start",
-        value: run.from.packet.center,
-        unit: "nm",
-        why: forcedOr(design.packet.start !== undefined, "where V is lowest"),
-      },
-      {
-        name: "time step",
-        value: run.stepper.timeStep,
-        unit: "fs",
-        why: "small against the packet's own periods",
-      },
-      { name: "end", value: run.end, unit: "fs", why: "two round trips at the mean energy" },
-      {
-        name: "box length",
-        value: grid.x[n - 1] - grid.x[0],
-        unit: "nm",
-        why: "beyond where the fastest part of the packet turns",
-      },
-      { name: "points", value: n, unit: "", why: "a fixed share of the shortest wavelength" },
-    ],
-    warnings: [
-      `The ${design.potential.shape} potential confines the particle, so nothing is transmitted: use "postern map", not estimate.`,
-    ],
-  };
 }

@@ -24,6 +24,7 @@ const DURATION_KEYS = ["timeStep", "end", "step", "points", "length"] as const;
  * Refuses a calculation that is too large, before anything is allocated for it; NaN counts as too large.
  * @param limit greatest number of nodes
  * @param remedy what to do where no forced numerics are to blame
+ * @param effort work of a step on a node in units of an implicit step's: 1 but for steps that are made of many
  * @throws DesignLimitError that names the forced key to blame, or the potential
  */
 export function refuseTooLarge(
@@ -32,15 +33,16 @@ export function refuseTooLarge(
   steps: number,
   remedy: string,
   limit = POINTS_LIMIT,
+  effort = 1,
 ): void {
   const tooWide = !(points <= limit);
-  if (!tooWide && points * steps <= RUN_LIMIT) return;
+  if (!tooWide && points * steps * effort <= RUN_LIMIT) return;
   const key = (tooWide ? SIZE_KEYS : DURATION_KEYS).find(
     (name: keyof Numerics) => numerics[name] !== undefined,
   );
   const need = tooWide
     ? `this design needs ${points} grid points, more than ${limit}`
-    : `this design needs ${points} grid points and ${steps} steps, more than ${RUN_LIMIT} in their product`;
+    : `this design needs ${points} grid points and ${steps} steps, more than ${Number((RUN_LIMIT / effort).toPrecision(2))} in their product`;
   throw new DesignLimitError(
     key === undefined ? "potential" : `numerics.${key}`,
     `${need}: ${key === undefined ? remedy : "leave this out to have it chosen"}`,

@@ -17,6 +17,12 @@ const REMAINING_SHARE = 0.1;
 const PROLONGATION = 1.4;
 /** Work (points times transforms) after which nothing is refined or prolonged any more. */
 const WORK_LIMIT = 8e8;
+
+export interface SplitOperatorOptions extends StudyOptions {
+  /** Work after which nothing is refined or prolonged any more, where that of a study of its own is too much; points times transforms. */
+  readonly work?: number;
+}
+
 /** Where the refinement stands: levels in space and time, the outcome there, and what each axis still leaves. */
 interface Standing {
   readonly s: number;
@@ -38,8 +44,9 @@ interface Standing {
 export async function splitOperatorTransmission(
   design: Design,
   accuracy: number,
-  options: StudyOptions,
+  options: SplitOperatorOptions,
 ): Promise<Calculation> {
+  const limit = options.work ?? WORK_LIMIT;
   let plan = planCircle(design, accuracy);
   let spent = 0;
   for (;;) {
@@ -49,17 +56,15 @@ export async function splitOperatorTransmission(
       !plan.forcedTime &&
       !plan.forcedSpace &&
       !design.potential.slopeTransform &&
-      (await isTooEarly(calculations, design, accuracy))
+      (await isTooEarly(calculations, design, accuracy, limit))
     ) {
       plan = planCircle(design, accuracy, plan.end * PROLONGATION);
       continue;
     }
-    const standing = await refine(calculations, plan, design, accuracy, spent);
+    const standing = await refine(calculations, plan, design, accuracy, limit - spent);
     spent += calculations.work;
     const late =
-      tooMuchRemains(standing.outcome, accuracy) &&
-      design.numerics.end === undefined &&
-      spent < WORK_LIMIT / 4;
+      tooMuchRemains(standing.outcome, accuracy) && design.numerics.end === undefined && spent < limit / 4;
     if (!late) return summary(design, plan, calculations, standing, accuracy);
     plan = planCircle(design, accuracy, plan.end * PROLONGATION);
   }
@@ -69,12 +74,15 @@ function tooMuchRemains(outcome: Outcome, accuracy: number): boolean {
   return outcome.unfinished > REMAINING_SHARE * accuracy * outcome.transmitted;
 }
 
-async function isTooEarly(calculations: Calculations, design: Design, accuracy: number): Promise<boolean> {
+async function isTooEarly(
+  calculations: Calculations,
+  design: Design,
+  accuracy: number,
+  limit: number,
+): Promise<boolean> {
   const outcome = await calculations.at(0, 0);
   return (
-    design.numerics.end === undefined &&
-    tooMuchRemains(outcome, accuracy) &&
-    calculations.work < WORK_LIMIT / 40
+    design.numerics.end === undefined && tooMuchRemains(outcome, accuracy) && calculations.work < limit / 40
   );
 }
 
@@ -83,7 +91,7 @@ async function refine(
   plan: CirclePlan,
   design: Design,
   accuracy: number,
-  spent: number,
+  work: number,
 ): Promise<Standing> {
   let s = plan.forcedSpace ? 0 : 1;
   let t = plan.fixedTime ? 0 : 1;
@@ -100,7 +108,7 @@ async function refine(
     else if (!plan.fixedTime) t++;
     else return standing;
     const cost = calculations.cost(s, t) + calculations.cost(s, t - 1) + calculations.cost(s - 1, t);
-    if (spent + calculations.work + cost > WORK_LIMIT) return standing;
+    if (calculations.work + cost > work) return standing;
   }
 }
 

@@ -1,6 +1,6 @@
 import type { Departure } from "../grid/journey.js";
 import type { Design } from "../problem/design.js";
-import { splitOperator } from "../steppers/split-operator.js";
+import { stepperNamed } from "../steppers/registry.js";
 import { amplitudeAtFace, beyondFace, CLEAR_AMPLITUDE } from "./common-checks.js";
 import { isForced } from "./forced.js";
 
@@ -41,7 +41,7 @@ export function warningsFor(design: Design, from: Departure): string[] {
   if (
     from.highest < potential.highest &&
     potential.highest > 4 * from.energy &&
-    numerics.stepper === splitOperator.name
+    stepperNamed(numerics.stepper ?? "")?.grid === "periodic"
   )
     warnings.push(
       "Behind a barrier this high the transmission may lie below the rounding of a Fourier transform; crank-nicolson keeps small amplitudes right.",

@@ -191,7 +191,7 @@ const BAD_OPTIONS: readonly (readonly [args: readonly string[], first: string])[
   ],
   [
     ["--stepper", "crank-nicholson"],
-    'postern: --stepper crank-nicholson: numerics.stepper: "split-operator" or "crank-nicolson" is needed; got "crank-nicholson"; did you mean "crank-nicolson"?',
+    'postern: --stepper crank-nicholson: numerics.stepper: "split-operator", "crank-nicolson", "eigenstates" or "chebyshev" is needed; got "crank-nicholson"; did you mean "crank-nicolson"?',
   ],
   [["--order", "3"], "postern: --order 3: numerics.order: an order of 2, 4 or 6 is needed; got 3"],
   [["--order", ""], 'postern: --order : numerics.order: an order of 2, 4 or 6 is needed; got ""'],

@@ -71,7 +71,8 @@ describe("postern COMMAND --help", () => {
         --json              print one JSON document instead of text
         --set <PATH=VALUE>  change a value of the design, as "packet.energy=0.2 eV"; repeatable
         --accuracy <R>      relative accuracy of the transmission (default: 1e-6)
-        --stepper <NAME>    split-operator or crank-nicolson (default: chosen by the design)
+        --stepper <NAME>    one of split-operator, crank-nicolson, eigenstates, chebyshev (default: chosen
+                            by the design)
         --order <N>         order in the time step: 2, 4, 6 (split-operator); 2, 4, 6 (crank-nicolson)
         -h, --help          show this help
 

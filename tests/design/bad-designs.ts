@@ -416,7 +416,7 @@ export const BAD_DESIGNS: readonly BadDesign[] = [
     what: "mistyped stepper",
     text: line(16, "  stepper: crank-nicholson"),
     message:
-      'a.yaml:16:12: numerics.stepper: "split-operator" or "crank-nicolson" is needed; got "crank-nicholson"; did you mean "crank-nicolson"?',
+      'a.yaml:16:12: numerics.stepper: "split-operator", "crank-nicolson", "eigenstates" or "chebyshev" is needed; got "crank-nicholson"; did you mean "crank-nicolson"?',
   },
   {
     what: "unknown boundary",
@@ -620,7 +620,7 @@ export const BAD_DESIGNS: readonly BadDesign[] = [
     text: RIGHT,
     stepper: "split",
     message:
-      '--stepper split: numerics.stepper: "split-operator" or "crank-nicolson" is needed; got "split"; did you mean "split-operator"?',
+      '--stepper split: numerics.stepper: "split-operator", "crank-nicolson", "eigenstates" or "chebyshev" is needed; got "split"; did you mean "split-operator"?',
   },
   {
     what: "--order",
