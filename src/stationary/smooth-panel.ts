@@ -96,10 +96,9 @@ export class SmoothPanel implements Element {
     const [p1, x1, p2, x2] = [even[0] + odd[0], even[1] + odd[1], even[2] + odd[2], even[3] + odd[3]];
     const [q1, y1, q2, y2] = [even[0] - odd[0], even[1] - odd[1], even[2] - odd[2], even[3] - odd[3]];
     const [P1, X1, P2, X2] = sums;
-    // One entry of P errs by `own` of its majorant; a product of two entries by twice that, and one unit more for itself.
+    // One entry of P errs by `own` of its majorant.
     const phase = Math.sqrt(size);
     const own = U * (SUM_ROUNDINGS + STEP_ROUNDINGS * phase) + this.massSlack * (1 + phase) + tail;
-    const pair = 2 * own + 2 * U;
     const scale = this.half * this.meanMass;
     // A change of g by gSlack: M changes by int P(1) P(s)^-1 [0 0; gSlack 0] P(s) P(-1)^-1 ds <= 2 cosh(2 K h) gSlack.
     const shift = 2 * Math.cosh(2 * phase) * gSlack * Math.max(1, this.rhoSize * this.rhoSize);
@@ -107,10 +106,12 @@ export class SmoothPanel implements Element {
     entries[at + 1] = (p2 * q1 - p1 * q2) * scale;
     entries[at + 2] = (x1 * y2 - x2 * y1) / scale;
     entries[at + 3] = x2 * q1 - x1 * q2;
-    bounds[at] = pair * (P1 * X2 + P2 * X1) + shift;
-    bounds[at + 1] = (pair * 2 * P1 * P2 + shift) * scale;
-    bounds[at + 2] = (pair * 2 * X1 * X2 + shift) / scale;
-    bounds[at + 3] = bounds[at];
+    bounds[at] = product(p1, y2, own * P1, own * X2) + product(p2, y1, own * P2, own * X1) + shift;
+    bounds[at + 1] =
+      (product(p2, q1, own * P2, own * P1) + product(p1, q2, own * P1, own * P2) + shift) * scale;
+    bounds[at + 2] =
+      (product(x1, y2, own * X1, own * X2) + product(x2, y1, own * X2, own * X1) + shift) / scale;
+    bounds[at + 3] = product(x2, q1, own * X2, own * P1) + product(x1, q2, own * X1, own * P2) + shift;
   }
 
   private majorantFor(g0Size: number): Majorant {
@@ -132,4 +133,9 @@ export class SmoothPanel implements Element {
       new SmoothPanel(this.profile, middle, this.right),
     ];
   }
+}
+
+/** Bound on the error of a product of two numbers with such errors, and on the rounding of it and of the sum that it goes into. */
+function product(a: number, b: number, aError: number, bError: number): number {
+  return aError * Math.abs(b) + bError * Math.abs(a) + aError * bError + 2 * U * Math.abs(a * b);
 }
