@@ -29,6 +29,8 @@ export { type DesignPathValue, designPathValue } from "./design/path-value.js";
 export { readDesign } from "./design/read-design.js";
 export { readLibraryEntry } from "./design/use.js";
 // Figures.
+export { crosscheckFigure } from "./figures/crosscheck-figure.js";
+export type { CrosscheckFigureOptions } from "./figures/drawn-crosscheck.js";
 export { type Figure, figureToSvg, type Raster } from "./figures/figure.js";
 export { type MapFigureOptions, mapFigure } from "./figures/map-figure.js";
 export { type SpectrumFigureOptions, spectrumFigure } from "./figures/spectrum-figure.js";
@@ -51,10 +53,15 @@ export { stepperNamed, steppers } from "./steppers/registry.js";
 export type { Stepper, StepperDefinition, System, TimeOrder } from "./steppers/stepper.js";
 // Studies: from a design to an answer.
 export type { Calculation, Check, Progress, RunSummary, StudyOptions } from "./studies/calculation.js";
+export { type Crosscheck, crosscheck } from "./studies/crosscheck.js";
+export type { CrosscheckCheck } from "./studies/crosscheck-checks.js";
 export { type Estimate, estimate } from "./studies/estimate.js";
 export { type History, type HistoryOptions, history } from "./studies/history.js";
 export { DesignLimitError } from "./studies/limits.js";
+export type { MeasuredOrder } from "./studies/measured-order.js";
+export type { Motion } from "./studies/motion.js";
 export { type PreparedRun, type PrepareOptions, prepare } from "./studies/prepare.js";
+export type { StateDistance, WitnessAnswer } from "./studies/second-opinions.js";
 export { type Spectrum, type SpectrumOptions, spectrum } from "./studies/spectrum.js";
 export { evenEnergies, packetEnergies } from "./studies/spectrum-energies.js";
 export type { SpectrumMethod, SpectrumRow } from "./studies/spectrum-row.js";

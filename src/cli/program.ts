@@ -1,4 +1,5 @@
 import { Command, type CommanderError } from "commander";
+import { crosscheckCommand } from "./crosscheck.js";
 import { estimateCommand } from "./estimate.js";
 import { EXIT } from "./exit-codes.js";
 import { mapCommand } from "./map.js";
@@ -13,7 +14,14 @@ import { validateCommand } from "./validate.js";
 import { version } from "./version.js";
 
 /** Every command, in the order in which help lists them. A new command is one file and one line here. */
-const COMMANDS = [estimateCommand, spectrumCommand, mapCommand, validateCommand, potentialsCommand];
+const COMMANDS = [
+  estimateCommand,
+  crosscheckCommand,
+  spectrumCommand,
+  mapCommand,
+  validateCommand,
+  potentialsCommand,
+];
 
 /** Runs the program with its arguments; returns what it ends with. */
 export async function run(args: readonly string[]): Promise<number> {

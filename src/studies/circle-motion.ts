@@ -12,6 +12,8 @@ import { columnOf, distance, largestDifference, largestOf, type Motion, perColum
 
 /** Error of the state that is aimed at where V is smooth: a fifth of what a crosscheck has to reach. */
 const GOAL = 2e-7;
+/** Halvings of the first circle's spacing to begin with: where V is sharp against the packet that circle is finer than need be. */
+const COARSEST = -1;
 /** Halvings of the time step, and of the spacing, after which no more is asked for. */
 const MOST_HALVINGS = 4;
 /** Halvings of the first time step where V has jumps: with the spacing halved once, a kinetic phase of pi takes two, and its twin stands there. */
@@ -92,7 +94,7 @@ type Runner = (s: number, t: number) => Promise<OnNodes>;
 /** Refines first the spacing, then the time step, each until what it leaves is within the goal. */
 async function smooth(at: Runner, common: Grid): Promise<Refined> {
   const apart = async (a: OnNodes, b: Promise<OnNodes>) => distance(common, a.values, (await b).values);
-  let s = 0;
+  let s = COARSEST;
   let t = 0;
   // A grid that a finer one only confirms is good enough itself: then the whole change is counted.
   while (s < MOST_HALVINGS && (await apart(await at(s, t), at(s + 1, t))) > GOAL) {
@@ -101,10 +103,10 @@ async function smooth(at: Runner, common: Grid): Promise<Refined> {
   }
   while (t < MOST_HALVINGS && SMOOTH_SHARES.timeStep * (await apart(await at(s, t), at(s, t - 1))) > GOAL)
     t++;
-  const confirmed = s === 0;
+  const confirmed = s === COARSEST;
   return {
     fine: await at(s, t),
-    coarser: await at(confirmed ? 1 : s - 1, t),
+    coarser: await at(confirmed ? s + 1 : s - 1, t),
     slower: await at(s, t - 1),
     shares: confirmed ? { ...SMOOTH_SHARES, spacing: CONFIRMED_SHARE } : SMOOTH_SHARES,
   };
