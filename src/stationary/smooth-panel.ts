@@ -4,8 +4,8 @@ import { FIT_NOISE, type Fit, fitPolynomial } from "./fit.js";
 import { LONGEST_PHASE, type Majorant, majorant, PanelSeries } from "./series.js";
 
 const TWO_OVER_HBAR2 = 2 / (HBAR * HBAR);
-/** Classes of |g0|, each half the one before: one number of terms for all energies in a class. */
-const CLASSES = 6;
+/** Classes of |g0|, each half the one before, down to where it no longer counts: one number of terms for all energies in a class. */
+const CLASSES = 64;
 /**
  * Roundings in units: a step of the recursion multiplies, adds and divides once each beside its smaller terms, and the n-th term has n steps behind it,
  * which sums to 3 K h times the majorant; the sums over the terms add two.
@@ -116,8 +116,8 @@ export class SmoothPanel implements Element {
 
   private majorantFor(g0Size: number): Majorant {
     const most = Math.max(LONGEST_PHASE ** 2 / this.rhoSize - this.variation, g0Size);
-    let index = 0;
-    while (index + 1 < CLASSES && g0Size <= most * 0.5 ** (index + 1)) index++;
+    const halvings = Math.floor(Math.log2(most / g0Size));
+    const index = Math.min(Math.max(halvings, 0), CLASSES);
     let found = this.classes[index];
     if (found === undefined) {
       found = majorant(this.g, most * 0.5 ** index, this.rho);
