@@ -26,6 +26,8 @@ export interface Departure {
   /** Levels of V on the packet's side and on the far side, eV. */
   readonly near: number;
   readonly far: number;
+  /** Greatest V anywhere, eV. */
+  readonly top: number;
   /** Total mean energy, eV: kinetic energy plus the near level. */
   readonly energy: number;
   /** Energies (eV, total) between which all but 2e-9 of the packet lies. */
@@ -57,6 +59,7 @@ export function departure(design: Design, clearance = CLEARANCE_WIDTHS): Departu
     mass,
     near,
     far,
+    top: potential.highest,
     energy: near + packet.energy,
     lowest: near + kineticEnergy(Math.max(0, k0 - PROMPT_SPREADS * spread), mass),
     highest: near + kineticEnergy(k0 + PROMPT_SPREADS * spread, mass),
@@ -89,13 +92,15 @@ export function slowing(clock: Clock, energy: number): number {
 
 /** Slowest prompt wavenumber, relative to the fastest, below which a packet counts as one with a slow tail. */
 const SLOW_EDGE = 0.1;
+/** A barrier that covers so much of the packet's energies above the levels keeps slow components from getting through. */
+const BARRIER_SHARE = 0.3;
 /** How much narrower the fast passage is made then, see `cayleyClock`. */
 const TAIL_NARROWING = 7;
 
 /**
  * The clock that lets a packet pass with least work, since the transmission does not depend on it. A packet whose
  * groups are all prompt: E_ref its mean energy, E_c the distance to its fast edge, so that every group keeps half its speed or better.
- * A packet with a slow tail (its slow edge, or a level on the far side, lies among its energies): E_ref is where groups
+ * A packet with a slow tail that gets through (its slow edge, or a level on the far side, lies among its energies, and no barrier stands well above it): E_ref is where groups
  * are slow and E_c a seventh of the rest, so that the fast groups, which would need a long box, are slowed to the
  * pace of the slow ones, which decide the end anyway.
  */
@@ -104,7 +109,9 @@ export function cayleyClock(from: Departure): CayleyClock {
   const fastEdge = from.k0 + PROMPT_SPREADS * from.spread;
   const threshold =
     from.far > from.lowest ? from.far : slowEdge < SLOW_EDGE * fastEdge ? from.near : undefined;
-  if (threshold === undefined || threshold >= from.energy)
+  const level = Math.max(from.near, from.far);
+  const barred = from.top - level > BARRIER_SHARE * (from.highest - level);
+  if (threshold === undefined || threshold >= from.energy || barred)
     return { kind: "cayley", reference: from.energy, cutoff: from.highest - from.energy };
   return { kind: "cayley", reference: threshold, cutoff: (from.highest - threshold) / TAIL_NARROWING };
 }

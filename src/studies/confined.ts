@@ -53,6 +53,7 @@ export function confinedMotion(design: Design): ConfinedMotion {
     mass,
     near: 0,
     far: 0,
+    top: Number.POSITIVE_INFINITY,
     energy,
     lowest: potential.lowest,
     highest,

@@ -78,6 +78,9 @@ export async function runToEnd(
   });
   const parts = shares(psi, grid, division);
   const beside = tails(psi, grid, division);
+  const besides =
+    (holdsBelow(potential, potential.levelLeft) ? beside.left : 0) +
+    (holdsBelow(potential, potential.levelRight) ? beside.right : 0);
   const total = parts.left + parts.inside + parts.right;
   const inside = insideOf(psi);
   const transmitted = through(parts);
@@ -87,11 +90,16 @@ export async function runToEnd(
     reflected: ((from.direction > 0 ? parts.left : parts.right) + parts.inside - inside) / total,
     inside: inside / total,
     insideBefore: insideBefore / total,
-    unfinished: (inside + beside.left + beside.right + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
+    unfinished: (inside + besides + TAIL_FACTOR * Math.abs(transmitted - earlier)) / total,
     drift: Math.abs(total - start) / start,
     sampling: Math.abs(start - 1),
     transmissionAt: (energy) => transmissionAt(energy, psi, stepper, from, packet, division),
   };
+}
+
+/** Whether something can be held that decays towards a side of that level: V lies below it somewhere, or a point may hold it. */
+function holdsBelow({ lowest, highest }: Potential, level: number): boolean {
+  return lowest < level || lowest === highest;
 }
 
 /** The structure without the foot of its near flank, nm. */
