@@ -17,7 +17,7 @@ export const POINTS_LIMIT = 2 ** 22;
 const RUN_LIMIT = 2e10;
 
 /** Forced numerics that make a grid large, and those that make a calculation long, the likeliest first. */
-const SIZE_KEYS = ["step", "points", "length", "end"] as const;
+export const SIZE_KEYS = ["step", "points", "length", "end"] as const;
 const DURATION_KEYS = ["timeStep", "end", "step", "points", "length"] as const;
 
 /**

@@ -17,7 +17,7 @@ import { largestDrift, pairsPerStep, untouchedCircle } from "./circle-plan.js";
 import { structureLength } from "./common-checks.js";
 import { type ConfinedMotion, confinedMotion } from "./confined.js";
 import { forcedRoom } from "./forced.js";
-import { BRING_CLOSER, DesignLimitError, refuseTooLarge } from "./limits.js";
+import { BRING_CLOSER, DesignLimitError, refuseTooLarge, SIZE_KEYS } from "./limits.js";
 
 /** Order of the Crank-Nicolson step where the time itself must be right. */
 const TRUE_TIME_ORDER = 6;
@@ -33,6 +33,8 @@ const STEP_MULTIPLE = 40;
 const REFINEMENT = 6;
 /** The least that it is lowered to for the sake of a stepper that cannot take many points: four times the error. */
 const LEAST_REFINEMENT = 3;
+/** Points suggested where eigenstates would be too many: every stretch may round its own share up. */
+const SUGGESTED_POINTS = 4000;
 /** Spreads of k to either side that have passed when a run ends. */
 const PASSED_SPREADS = 3;
 /** Work of an eigenstate step on a node, in implicit steps' per node of the grid: 8 operations against some thirty. Measured: 0.25 to 0.4. */
@@ -141,9 +143,11 @@ function affordable(stretches: readonly Stretch[]): number {
 
 function refuseTooMany({ numerics }: Design, { name }: StepperDefinition, points: number): void {
   if (points <= MOST_EIGENSTATES) return;
-  const key = (["step", "points"] as const).find((k) => numerics[k] !== undefined) ?? "stepper";
+  const key = SIZE_KEYS.find((name) => numerics[name] !== undefined) ?? "stepper";
   const remedy =
-    key === "stepper" ? "use crank-nicolson, or force fewer points" : "ask for fewer, or use crank-nicolson";
+    key === "stepper"
+      ? `use crank-nicolson, or force a coarser grid, as "numerics.points: ${SUGGESTED_POINTS}"`
+      : "ask for less here, or use crank-nicolson";
   throw new DesignLimitError(
     `numerics.${key}`,
     `${name} takes at most ${MOST_EIGENSTATES} grid points, and this design needs ${points}: ${remedy}`,

@@ -193,6 +193,14 @@ const BAD_OPTIONS: readonly (readonly [args: readonly string[], first: string])[
     ["--stepper", "crank-nicholson"],
     'postern: --stepper crank-nicholson: numerics.stepper: "split-operator", "crank-nicolson", "eigenstates" or "chebyshev" is needed; got "crank-nicholson"; did you mean "crank-nicolson"?',
   ],
+  [
+    ["--stepper", "eigenstates"],
+    'postern: --stepper eigenstates: numerics.stepper: eigenstates follows a packet in time, as "postern map" shows it; an estimate, which refines its grid, needs crank-nicolson, split-operator or chebyshev',
+  ],
+  [
+    ["--stepper", "chebyshev", "--order", "4"],
+    "postern: --order 4: numerics.order: chebyshev is exact in time, so there is no order to choose; leave this out",
+  ],
   [["--order", "3"], "postern: --order 3: numerics.order: an order of 2, 4 or 6 is needed; got 3"],
   [["--order", ""], 'postern: --order : numerics.order: an order of 2, 4 or 6 is needed; got ""'],
   [["--out", ""], "postern: --out: the name of a folder is needed"],

@@ -14,6 +14,15 @@ describe("sech2 barrier by the split operator, asked for 1e-10 (computed by 40-5
     expect(answer.stepper).toBe("split-operator");
     expectTrusted(answer, reference, { accuracy: 1e-10, referenceError: 1e-15 });
   });
+
+  it("0.2 eV, 10 nm, by Chebyshev expansion, which leaves no error of the time step: 0.2628402087185223", async () => {
+    const potential = "{ shape: sech2, height: 0.3 eV, width: 2 nm }";
+    const numerics = "{ stepper: chebyshev }";
+    const answer = await estimateRow({ potential, energy: 0.2, width: 10, numerics }, 1e-10);
+    expect(answer).toMatchObject({ stepper: "chebyshev", order: "exact", parts: { timeStep: 0 } });
+    expect(answer.checks.map(({ name }) => name)).not.toContain("time step");
+    expectTrusted(answer, 0.2628402087185223, { accuracy: 1e-10, referenceError: 1e-15 });
+  });
 });
 
 /** hbar^2 / (2 m_e) in eV nm^2, CODATA 2022 (check-values.md, 1: computed). */
@@ -56,5 +65,16 @@ describe("reflectionless wells -l(l+1) hbar^2/(2 m a^2) / cosh^2(x/a): R = 0 at 
     expect(answer.reflection.value).toBeLessThan(1e-12);
     // The bound adds the roundings of some thousand transforms, counted from the drift of the norm.
     expect(answer.reflection.error).toBeLessThan(1e-11);
+  });
+});
+
+describe("a barrier with jumps by Chebyshev expansion (closed form: Landau & Lifshitz par. 25, problem 2 [memory])", () => {
+  it("0.3 eV, 5 nm, a packet of 0.15 eV and 10 nm: 0.02662290308416971, within the bound that a circle can give", async () => {
+    const potential = "{ shape: rectangular, height: 0.3 eV, width: 5 nm }";
+    const numerics = "{ stepper: chebyshev }";
+    const answer = await estimateRow({ potential, energy: 0.15, width: 10, numerics }, 1e-3);
+    // The band-limited V leaves h^3: no time step is to blame.
+    expectTrusted(answer, 0.02662290308416971, { accuracy: 1e-3 });
+    expect(answer.parts.timeStep).toBe(0);
   });
 });

@@ -202,6 +202,16 @@ describe("what is refused or stopped", () => {
     const heavy = potentialOf("rectangular", { height: 0.3, width: 5, mass: 2 * MASS });
     const split = designOf(heavy, packet, { stepper: "split-operator" });
     await expect(estimate(split)).rejects.toMatchObject({ path: "numerics.stepper" });
+    const expansion = designOf(heavy, packet, { stepper: "chebyshev" });
+    await expect(estimate(expansion)).rejects.toMatchObject({ path: "numerics.stepper" });
+  });
+
+  it("eigenstates, which cannot refine a grid, and an order where there is none", async () => {
+    const expansion = estimate(designOf(barrier, packet, { stepper: "eigenstates" }));
+    await expect(expansion).rejects.toMatchObject({ path: "numerics.stepper" });
+    await expect(expansion).rejects.toThrow(/crank-nicolson, split-operator or chebyshev/);
+    const ordered = estimate(designOf(barrier, packet, { stepper: "chebyshev", order: 2 }));
+    await expect(ordered).rejects.toMatchObject({ path: "numerics.order" });
   });
 
   it.each<[string, Numerics]>([
@@ -210,15 +220,18 @@ describe("what is refused or stopped", () => {
     ["numerics.length", { length: 1e9 }],
     ["numerics.end", { end: 1e15 }],
     ["numerics.timeStep", { timeStep: 1e-9 }],
-  ])("an absurd %s, by name and at once, with either stepper", async (path, numerics) => {
-    for (const stepper of ["crank-nicolson", "split-operator"]) {
-      const before = performance.now();
-      const refused = estimate(designOf(barrier, packet, { ...numerics, stepper }));
-      await expect(refused).rejects.toThrow(DesignLimitError);
-      await expect(refused).rejects.toMatchObject({ path });
-      expect(performance.now() - before).toBeLessThan(2000);
-    }
-  });
+  ])(
+    "an absurd %s, by name and at once, with any stepper that there is an estimate by",
+    async (path, numerics) => {
+      for (const stepper of ["crank-nicolson", "split-operator", "chebyshev"]) {
+        const before = performance.now();
+        const refused = estimate(designOf(barrier, packet, { ...numerics, stepper }));
+        await expect(refused).rejects.toThrow(DesignLimitError);
+        await expect(refused).rejects.toMatchObject({ path });
+        expect(performance.now() - before).toBeLessThan(2000);
+      }
+    },
+  );
 
   it("a packet of a metre before a barrier of nanometres", async () => {
     await expect(estimate(designOf(barrier, { ...packet, width: 1e9 }))).rejects.toMatchObject({

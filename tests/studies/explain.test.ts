@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
 import type { Numerics } from "../../src/problem/design.js";
+import { steppers } from "../../src/steppers/registry.js";
 import { planClosed } from "../../src/studies/closed-plan.js";
 import { explainPlan } from "../../src/studies/explain.js";
 import { designOf, potentialOf } from "../grid/samples.js";
@@ -12,7 +13,7 @@ const FORCED = /^as the design asks/;
 
 describe("the explanation of a plan", () => {
   it("gives every choice a value and a reason, and none is said to be the design's where nothing is forced", () => {
-    for (const stepper of ["crank-nicolson", "split-operator"]) {
+    for (const { name: stepper } of steppers) {
       const { choices } = explained({ stepper });
       for (const { name, value, why } of choices) {
         expect(why.length, name).toBeGreaterThan(10);
@@ -86,5 +87,14 @@ describe("warnings", () => {
     const high = potentialOf("rectangular", { height: 3, width: 5 });
     const plan = explainPlan(designOf(high, { energy: 0.15, width: 20 }, { stepper: "split-operator" }));
     expect(plan.warnings.join()).toMatch(/below the rounding of a Fourier transform/);
+  });
+
+  it("says of eigenstates that they make maps, and finds none for it", () => {
+    const before = performance.now();
+    const { choices, warnings } = explained({ stepper: "eigenstates", points: 4000 });
+    // Finding them would take some ten seconds.
+    expect(performance.now() - before).toBeLessThan(1000);
+    expect(choices.find(({ name }) => name === "points")?.why).toMatch(FORCED);
+    expect(warnings).toEqual([expect.stringMatching(/eigenstates follows a packet in time.*postern map/)]);
   });
 });

@@ -119,3 +119,25 @@ describe("following for longer", () => {
     expect(last(column(free, "inside"))).toBeLessThanOrEqual(0.02 * Math.max(...column(free, "inside")));
   });
 });
+
+describe("a history by a stepper that is exact in time", () => {
+  it.each([
+    ["eigenstates", { points: 700 }],
+    ["chebyshev", { points: 512 }],
+  ])(
+    "by %s has no error of the time step, and is that of the others within theirs",
+    async (stepper, numerics) => {
+      const smooth = designOf(potentialOf("sech2", { height: 0.3, width: 2 }), packet, {
+        ...numerics,
+        stepper,
+        end: 200,
+      });
+      const seen = await history(smooth, small);
+      expect(seen).toMatchObject({ stepper, order: "exact", errors: { timeStep: 0 } });
+      const other = stepper === "chebyshev" ? "split-operator" : "crank-nicolson";
+      const by = await history({ ...smooth, numerics: { ...smooth.numerics, stepper: other } }, small);
+      const gap = Math.abs(last(column(seen, "transmission")) - last(column(by, "transmission")));
+      expect(gap).toBeLessThan(1e-6 + by.errors.timeStep);
+    },
+  );
+});
