@@ -67,7 +67,7 @@ function resonancesText({ resonances }: Spectrum): string {
       `width ${formatQuantity(width, "energy", undefined, 3)}`,
     ];
   });
-  return `resonances (full width at half maximum)\n${table(rows, "  ")}${more(resonances.length)}`;
+  return `resonances (energy, and full width at half height)\n${table(rows, "  ")}${more(resonances.length)}`;
 }
 
 function packetsText({ packets }: Spectrum): string {

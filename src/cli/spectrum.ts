@@ -17,7 +17,7 @@ interface Flags extends DesignFlags, EnergyFlags, Pick<FigureFlags, "width" | "h
 }
 
 const EXAMPLES = `
-Energies are measured from the left level. Without any, about a hundred over the packet's own are taken.
+Energies are measured from the left level. Without any, those of the packet are taken.
 
 Examples:
   postern spectrum blocking.yaml

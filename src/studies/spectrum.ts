@@ -1,5 +1,7 @@
 import { DEFAULT_ACCURACY, type Design } from "../problem/design.js";
 import { stationaryRefusal } from "../stationary/refusal.js";
+import type { Resonance } from "../stationary/resonances.js";
+import { resonancesBetween } from "../stationary/resonances-between.js";
 import { prepareScattering, type Scatterer } from "../stationary/scattering.js";
 import { stepperNamed } from "../steppers/registry.js";
 import type { Check, StudyOptions } from "./calculation.js";
@@ -8,7 +10,6 @@ import { packetSpectrum, type SpectrumPacket } from "./packet-spectrum.js";
 import { spectrumChecks } from "./spectrum-checks.js";
 import { checkEnergies, threshold } from "./spectrum-energies.js";
 import { spectrumNotes } from "./spectrum-notes.js";
-import { peaks, type Resonance } from "./spectrum-resonances.js";
 import { SPECTRUM_METHODS, type SpectrumMethod, type SpectrumRow } from "./spectrum-row.js";
 
 export interface SpectrumOptions extends StudyOptions {
@@ -28,7 +29,7 @@ export interface Spectrum {
   readonly floor: number;
   /** Relative accuracy of the transmission: what was asked for and what the widest bound says was reached. */
   readonly accuracy: { readonly asked: number; readonly reached: number };
-  /** Peaks within the range, their energies and widths by the witness. */
+  /** Resonances within the range, however narrow, by the witness: energy (eV above the left level) and full width at half height, eV. */
   readonly resonances: readonly Resonance[];
   readonly checks: readonly Check[];
   readonly verdict: "trusted" | "doubtful";
@@ -55,7 +56,7 @@ export async function spectrum(
   if (!SPECTRUM_METHODS.includes(method))
     throw new TypeError(`the method must be ${SPECTRUM_METHODS.join(" or ")}; got "${method}"`);
   // Says in its own words why nothing is transmitted, where that is so.
-  const least = threshold(design);
+  threshold(design);
   const { potential, numerics } = design;
   const refusal = stationaryRefusal(potential);
   if (refusal) throw new DesignLimitError("potential", refusal);
@@ -82,11 +83,20 @@ export async function spectrum(
     packets,
     floor,
     accuracy: { asked, reached: checks[0].value },
-    resonances: peaks(rows, (energy) => witness.at(potential.levelLeft + energy).transmission.value, least),
+    resonances: resonancesOf(design, totals),
     checks,
     verdict: checks.every((check) => check.passed) ? "trusted" : "doubtful",
     notes: spectrumNotes(design, method, rows, floor),
   };
+}
+
+/** The resonances from the first energy to the last. */
+function resonancesOf({ potential, particleMass }: Design, totals: readonly number[]): Resonance[] {
+  const [from, to] = [totals[0], totals[totals.length - 1]];
+  return resonancesBetween(potential, particleMass, from, to).map(({ energy, width }) => ({
+    energy: energy - potential.levelLeft,
+    width,
+  }));
 }
 
 type Point = Pick<SpectrumRow, "transmission" | "reflection">;

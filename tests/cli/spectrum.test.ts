@@ -110,8 +110,8 @@ describe("postern spectrum as text", () => {
         0.12 eV  0.0550... 0.9449...
         0.14 eV  0.0579... 0.9420...
 
-      resonances (full width at half maximum)
-        0.06824 eV  width 0.0101 eV
+      resonances (energy, and full width at half height)
+        0.06778 eV  width 9.86 meV
 
       checks
         passed  accuracy  x limit 1e-6
