@@ -12,7 +12,7 @@ import { LAST_PART, type Outcome, runToEnd } from "./outcome.js";
 /** Cells of the successive calculations in units of the unrefined grid's. Tuned for least work to 1e-6 on check-values 3.6. */
 export const REFINEMENTS = [1, 2, 3, 4, 5, 6, 8, 10, 12, 16, 20, 24, 32];
 /** Calculations before the bound is believed. */
-const FEWEST_CALCULATIONS = 4;
+const FEWEST_CALCULATIONS = 5;
 /** Share of the error asked for that the spacing may take, ... */
 const SPACING_SHARE = 0.7;
 /** ... and that what remains may take. */
@@ -86,7 +86,7 @@ interface Attempt {
   readonly transmission: Extrapolation;
   readonly reflection: Extrapolation;
   readonly atMean: Extrapolation;
-  /** What the spacing leaves of the transmission: the tableau's own bound, or how far a second way of extrapolating lies away. */
+  /** What the spacing leaves of the transmission: the larger bound of two extrapolations, or their distance with caution. */
   readonly spacing: number;
 }
 
@@ -118,8 +118,9 @@ async function attemptAt(
     // The smaller one of T and R falls exponentially with thickness or smoothness, so its logarithm makes the better series.
     const [small, direct] =
       outcomes[0].outcome.transmitted < 0.5 ? [outcome.transmitted, t] : [outcome.reflected, r];
-    const second = Math.exp(logarithm.add(1 / refinement, Math.log(Math.max(small, Number.MIN_VALUE))).value);
-    spacing = Math.min(1, Math.max(t.error, CAUTION * Math.abs(direct.value - second)));
+    const l = logarithm.add(1 / refinement, Math.log(Math.max(small, Number.MIN_VALUE)));
+    const second = Math.exp(l.value);
+    spacing = Math.min(1, Math.max(t.error, second * l.error, CAUTION * Math.abs(direct.value - second)));
     atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
     if (!held && prolonged(design, plan, outcome, accuracy, SLACK)) break;
     // Where too much remains for good, the grid need not be better than that.

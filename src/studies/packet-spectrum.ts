@@ -53,7 +53,7 @@ const RECORD_LENGTH = 1.8;
 /** Shares of the error asked for that the end and the spacing may take. */
 const UNFINISHED_SHARE = 0.1;
 const SPACING_SHARE = 0.7;
-const FEWEST_CALCULATIONS = 4;
+const FEWEST_CALCULATIONS = 5;
 /** Work (nodes times steps) of one calculation, and of all of them, beyond which nothing is refined or tried again. */
 const RUN_LIMIT = 2e8;
 const TOTAL_LIMIT = 1.5e9;
@@ -210,7 +210,11 @@ async function refined(
       const x = inverse[i].add(1 / refinement, 1 / t);
       const l = logarithm[i].add(1 / refinement, Math.log(t));
       // Relative: T = 1/x, held against a second extrapolation in ln T.
-      const relative = Math.max(x.error / x.value, CAUTION * Math.abs(Math.exp(l.value) * x.value - 1));
+      const relative = Math.max(
+        x.error / x.value,
+        l.error,
+        CAUTION * Math.abs(Math.exp(l.value) * x.value - 1),
+      );
       return relative >= 0 ? relative : Number.POSITIVE_INFINITY;
     });
     if (runs >= FEWEST_CALCULATIONS && spacing.every((s) => s <= SPACING_SHARE * accuracy)) break;

@@ -70,15 +70,26 @@ describe("extrapolation to vanishing spacing", () => {
     },
   );
 
-  it("does not take one small change for convergence: the change before has a say", () => {
+  it("does not take one small change for convergence: the changes before have a say", () => {
+    // A cubic in h^2 but for the fourth value, made to leave the extrapolated value where it was.
+    const cubic = (h: number) => 1 + 0.5 * h ** 2 + 0.3 * h ** 4 + 0.2 * h ** 6;
     const tableau = new Extrapolation();
-    // Made so that the third value happens to equal the extrapolated second one, in row and diagonal.
-    tableau.add(1, 1);
-    const second = tableau.add(0.5, 2);
-    const straight = (h: number) => second.value + (1 - second.value) * h * h;
-    const third = tableau.add(1 / 3, straight(1 / 3));
-    expect(Math.abs(third.value - second.value)).toBeLessThan(1e-12);
-    expect(third.error).toBeGreaterThan(1e-3);
+    for (const cells of [1, 2, 3]) tableau.add(1 / cells, cubic(1 / cells));
+    const third = tableau.result;
+    // The parabola in h^2 through the first three values, at the fourth spacing: no fourth term shows.
+    const at = (h: number) => {
+      const [a, b, c] = [1, 1 / 4, 1 / 9];
+      const [fa, fb, fc] = [cubic(1), cubic(1 / 2), cubic(1 / 3)];
+      const x = h * h;
+      return (
+        (fa * (x - b) * (x - c)) / ((a - b) * (a - c)) +
+        (fb * (x - a) * (x - c)) / ((b - a) * (b - c)) +
+        (fc * (x - a) * (x - b)) / ((c - a) * (c - b))
+      );
+    };
+    const fourth = tableau.add(1 / 4, at(1 / 4));
+    expect(Math.abs(fourth.value - third.value)).toBeLessThan(1e-14);
+    expect(fourth.error).toBeGreaterThan(1e-4);
   });
 
   it("passes NaN on as a bound that nothing meets", () => {
