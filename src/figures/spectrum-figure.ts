@@ -10,7 +10,13 @@ import { type MarkedResonance, resonanceLabels, STRIP } from "./resonance-labels
 import { MOST_MARKED } from "./spectrum-data.js";
 import { layOutSpectrum, panelWidth, spectrumTitle, titleLinesOf } from "./spectrum-layout.js";
 import { spectrumLegend } from "./spectrum-legend.js";
-import { energyMarks, packetWeight, resonanceMark, type SpectrumDesign } from "./spectrum-marks.js";
+import {
+  type EnergyMark,
+  energyMarks,
+  packetWeight,
+  resonanceMark,
+  type SpectrumDesign,
+} from "./spectrum-marks.js";
 import { boundsVisible, type Curve, type SpectrumPanel, spectrumPanel } from "./spectrum-panel.js";
 import { baseSize, PROFILE_LINE, REFLECTION_LINE } from "./theme.js";
 
@@ -80,44 +86,63 @@ function drawn(
 ): string {
   const { size, em, from, to, dpi } = page;
   const resonances = spectrum.resonances.filter(({ energy }) => energy >= from && energy <= to);
-  const marks = energyMarks(design, from, to);
-  const weight = packetWeight(design);
-  const strip = resonances.length > 0 ? STRIP * em : 0;
-  const titleLines = titleLinesOf(options.title, size.width, em);
-  // Axes and legend need each other's size: heights from a guess decide the ticks, whose labels decide the width.
+  const marks = [...resonances.map(({ energy }) => resonanceMark(energy)), ...energyMarks(design, from, to)];
+  const { boxes, legend, linear, log, leftRoom } = composed(spectrum, design, options, page, marks);
+  const pixel = 96 / dpi;
+  return [
+    spectrumPanel(boxes.linear, linear, leftRoom, em, pixel),
+    spectrumPanel(boxes.log, log, leftRoom, em, pixel),
+    bottomAxis(boxes.log, linear.energies.axis, em),
+    resonanceLabels(boxes.linear, resonances, linear.energies, size.width, em),
+    drawLegend(legend, boxes.legend.x, boxes.legend.y, em),
+    spectrumTitle(boxes, em),
+  ].join("\n");
+}
+
+/** Panels, legend and where they stand. Axes and legend need each other's size, so they are made for a guessed one first. */
+function composed(
+  spectrum: DrawnSpectrum,
+  design: SpectrumDesign,
+  options: SpectrumFigureOptions,
+  { size, em, from, to, dpi }: Page,
+  marks: readonly EnergyMark[],
+) {
   const wide = energyAxis(from, to, 0.85 * size.width, em);
   const guess = panelsOf(spectrum, options, wide, 0.25 * size.height, em);
   const leftRoom = sideRoom([guess.linear.axis, guess.log.axis], em);
   const horizontal = panelWidth(size.width, leftRoom, wide.axis, em);
   const energies = energyAxis(from, to, horizontal.width, em);
-  const hasWeight = shows(weight, from, to);
+  const weight = seenWeight(packetWeight(design), from, to);
+  const resonances = marks.some(({ name }) => name === undefined);
+  const strip = resonances ? STRIP * em : 0;
+  const titleLines = titleLinesOf(options.title, size.width, em);
+  const { curves } = guess.linear;
+  const hidden = guess.log.floor !== undefined;
   const parts = {
     method: spectrum.method,
-    curves: guess.linear.curves,
-    bounds: true,
-    weight: hasWeight,
+    curves,
+    weight: weight !== undefined,
     marks,
     energies,
-    resonances: resonances.length > 0,
-    hidden: guess.log.floor !== undefined,
+    resonances,
+    hidden,
   };
-  const room = layOutLegend(spectrumLegend(parts, em), horizontal.width, em);
-  const boxes = layOutSpectrum(size, horizontal, titleLines, room, strip, em, dpi);
-  const panels = panelsOf(spectrum, options, energies, boxes.linear.height, em);
-  const lines = [...resonances.map(({ energy }) => resonanceMark(energy)), ...marks];
-  const linear = { ...panels.linear, marks: lines, weight: hasWeight ? weight : undefined };
-  const log = { ...panels.log, marks: lines };
-  const bounds = boundsVisible(boxes.linear, linear, em) || boundsVisible(boxes.log, log, em);
-  const legend = layOutLegend(spectrumLegend({ ...parts, bounds }, em), horizontal.width, em);
-  const pixel = 96 / dpi;
-  return [
-    spectrumPanel(boxes.linear, linear, leftRoom, em, pixel),
-    spectrumPanel(boxes.log, log, leftRoom, em, pixel),
-    bottomAxis(boxes.log, energies.axis, em),
-    resonanceLabels(boxes.linear, resonances, energies, size.width, em),
-    drawLegend(legend, boxes.legend.x, boxes.legend.y, em),
-    spectrumTitle(boxes, em),
-  ].join("\n");
+  const laidOut = (bounds: boolean) => {
+    const legend = layOutLegend(spectrumLegend({ ...parts, bounds }, em), horizontal.width, em);
+    const boxes = layOutSpectrum(size, horizontal, titleLines, legend, strip, em, dpi);
+    const panels = panelsOf(spectrum, options, energies, boxes.linear.height, em);
+    return {
+      legend,
+      boxes,
+      linear: { ...panels.linear, marks, weight },
+      log: { ...panels.log, marks },
+      leftRoom,
+    };
+  };
+  // Whether a bound is seen depends on the height that the legend leaves, and the legend on whether it is seen.
+  const first = laidOut(false);
+  const seen = [first.linear, first.log].some((panel) => boundsVisible(first.boxes.linear, panel, em));
+  return seen ? laidOut(true) : first;
 }
 
 /** Both panels without marks, for a height. */
@@ -168,11 +193,15 @@ function energyRange(rows: readonly SpectrumRow[], { potential }: SpectrumDesign
 
 const SHADE_SAMPLES = 200;
 
-/** Whether the packet has weight within the range that would be seen. */
-function shows(weight: (energy: number) => number, from: number, to: number): boolean {
+/** The packet's weight where some of it within the range would be seen. */
+function seenWeight(
+  weight: (energy: number) => number,
+  from: number,
+  to: number,
+): ((energy: number) => number) | undefined {
   for (let n = 0; n <= SHADE_SAMPLES; n++)
-    if (weight(from + (n / SHADE_SAMPLES) * (to - from)) > SEEN_WEIGHT) return true;
-  return false;
+    if (weight(from + (n / SHADE_SAMPLES) * (to - from)) > SEEN_WEIGHT) return weight;
+  return undefined;
 }
 
 /** The figure in words. */
