@@ -56,7 +56,7 @@ function matched({ matched: { end_fs, instants, motions, composed } }: Crosschec
 
 function orderRow({ stepper, of, order, declared, measured, roundOff, passed }: MeasuredOrder): string[] {
   const name = of === "time step" ? `${stepper}, order ${order}` : stepper;
-  const found = roundOff ? `${measured.toFixed(2)}, at round-off` : measured.toFixed(2);
+  const found = [measured?.toFixed(2), roundOff ? "at round-off" : undefined].filter(Boolean).join(", ");
   return [`${mark(passed)}  ${name}`, of, declared === undefined ? "spectral" : String(declared), found];
 }
 

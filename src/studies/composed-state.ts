@@ -1,7 +1,9 @@
 import type { Grid } from "../grid/grid.js";
 import type { Departure } from "../grid/journey.js";
+import { normalTail } from "../numerics/erfc.js";
 import { gaussLegendre } from "../numerics/quadrature.js";
 import { kineticEnergy, wavenumberOf } from "../packets/gaussian.js";
+import { hasPoint } from "../potentials/points.js";
 import type { Design } from "../problem/design.js";
 import { prepareScattering, type Scatterer } from "../stationary/scattering.js";
 import { HBAR } from "../units/constants.js";
@@ -10,8 +12,8 @@ import { beyondFace } from "./common-checks.js";
 import type { MatchedPlan } from "./matched-plan.js";
 import { distance } from "./motion.js";
 
-/** Spreads of k to either side that are added up: a probability of 1e-19 lies beyond. */
-const SPREADS = 9;
+/** Spreads of k to either side that are added up: a probability of 1.5e-23 lies beyond. */
+const SPREADS = 10;
 /** Change of the state on doubling the panels at which no more waves are added: well below what the steppers aim at. */
 const GOAL = 2e-8;
 /** Waves of one sum beyond which no more are added; a resonance too narrow for them shows as a change that stays. */
@@ -36,8 +38,9 @@ export interface ComposedState {
  *   psi(eta > 0) = integral dk phi(k) exp(-i E t / hbar) t(k) exp(i k' eta), below the far level exp(-kappa eta),
  *   phi(k) = (2 sigma^2 / pi)^(1/4) (2 pi)^(-1/2) exp(-sigma^2 (k - k0)^2 - i k xi_0),
  *
- * by Gauss-Legendre panels, halved until nothing changes. Waves that move away from the start are free. Next to the far level k' or kappa
- * is the variable, in which the integrand is smooth. Cost O(waves times nodes). Source: superposition of stationary states, common practice, no source.
+ * by Gauss-Legendre panels, halved until nothing changes. A wave with k < 0 is the time-reversed one with |k|, so that r(-k) = r(k)* and
+ * t(-k) = t(k)*, smoothly through k = 0. Next to the far level k' or kappa is the variable, in which the integrand is smooth. Left out are bound states and, above
+ * a lower far level, waves that decay on the near side: `unreached` bounds their amplitude in the start. Cost O(waves times nodes). Source: superposition of stationary states, common practice, no source.
  */
 export async function composedState(
   design: Design,
@@ -58,10 +61,24 @@ export async function composedState(
     const next = sumOf(waves, plan, scatterer, design, common);
     const change = distance(common, next, state);
     state = next;
-    // What lies beyond the face from the start is no sum of incoming waves.
     if (change <= GOAL || waves.length > MOST_WAVES)
-      return { state, error: change + 2 * Math.sqrt(beyondFace(from)), waves: waves.length };
+      return { state, error: change + unreached(design, from), waves: waves.length };
   }
+}
+
+/**
+ * Bound on the amplitude of what is no sum of these waves: what lies beyond the face from the start, or beyond SPREADS; and what decays on the near side
+ * like exp(kappa xi), whose overlap with the packet is (8 pi sigma^2)^(1/4) (2 kappa)^(1/2) exp(-sigma^2 (k0^2 - kappa^2) - kappa |xi_0|), at most
+ * 0.5 exp(-sigma^2 k0^2) for a packet that starts ten widths away, and shrinks with the distance.
+ */
+function unreached({ potential }: Design, from: Departure): number {
+  const { near, far, k0, packet } = from;
+  const decaying = far < near || potential.lowest < Math.min(near, far) || hasPoint(potential);
+  return (
+    2 * Math.sqrt(beyondFace(from)) +
+    Math.sqrt(2 * normalTail(SPREADS)) +
+    (decaying ? 0.5 * Math.exp(-((packet.width * k0) ** 2)) : 0)
+  );
 }
 
 interface Wave {
@@ -75,9 +92,8 @@ function wavesOf(from: Departure, panel: number): Wave[] {
   const high = from.k0 + SPREADS * from.spread;
   const threshold = wavenumberOf(Math.max(0, from.far - from.near), from.mass);
   const same = (k: number) => [k, 1] as const;
-  const waves = panels(low, Math.min(0, high), panel, same);
-  const start = Math.max(0, low);
-  if (threshold <= start || threshold >= high) return [...waves, ...panels(start, high, panel, same)];
+  if (threshold <= Math.max(0, low) || threshold >= high)
+    return [...panels(low, Math.min(0, high), panel, same), ...panels(Math.max(0, low), high, panel, same)];
   const below = (kappa: number) => {
     const k = Math.sqrt(threshold ** 2 - kappa ** 2);
     return [k, kappa / k] as const;
@@ -87,10 +103,10 @@ function wavesOf(from: Departure, panel: number): Wave[] {
     return [k, far / k] as const;
   };
   // From the middle down to nothing k itself is the smooth one again.
-  const middle = Math.max(start, threshold / 2);
+  const middle = Math.max(low, threshold / 2);
   return [
-    ...waves,
-    ...panels(start, middle, panel, same),
+    ...panels(low, Math.min(0, middle), panel, same),
+    ...panels(Math.max(0, low), middle, panel, same),
     ...panels(0, Math.sqrt(threshold ** 2 - middle ** 2), panel, below),
     ...panels(0, Math.sqrt(high ** 2 - threshold ** 2), panel, above),
   ];
@@ -130,12 +146,12 @@ function sumOf(
     const phase = k * away - (energy * end) / HBAR;
     const came = [size * Math.cos(phase), size * Math.sin(phase)] as const;
     addWave(out, x, near, direction * k, faceNear, came);
-    if (!(k > 0)) continue;
+    const sign = Math.sign(k);
     const { reflectedAmplitude, transmittedAmplitude } = scatterer.at(energy);
-    addWave(out, x, near, -direction * k, faceNear, times(came, reflectedAmplitude));
+    addWave(out, x, near, -direction * k, faceNear, times(came, reversed(reflectedAmplitude, sign)));
     const kFar = wavenumberOf(Math.abs(energy - from.far), scatterer.farMass);
-    const through = times(came, transmittedAmplitude);
-    if (energy > from.far) addWave(out, x, far, direction * kFar, faceFar, through);
+    const through = times(came, reversed(transmittedAmplitude, sign));
+    if (energy > from.far) addWave(out, x, far, direction * sign * kFar, faceFar, through);
     else addDecay(out, x, far, kFar, faceFar, through);
   }
   return out;
@@ -145,6 +161,9 @@ type Complex = readonly [re: number, im: number];
 type Span = readonly [from: number, to: number];
 
 const times = ([a, b]: Complex, [c, d]: Complex): Complex => [a * c - b * d, a * d + b * c];
+
+/** An amplitude, or for sign -1 that of the time-reversed wave. */
+const reversed = ([re, im]: Complex, sign: number): Complex => [re, sign * im];
 
 /** First and end index of the nodes, which are neighbours, that a condition holds for. */
 function indices(x: Float64Array, holds: (place: number) => boolean): Span {

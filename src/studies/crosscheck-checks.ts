@@ -153,7 +153,7 @@ function orderCheck({
   return {
     kind: "order",
     name: `order in the ${of}, ${stepper}${of === "time step" ? ` of order ${order}` : ""}`,
-    value: measured,
+    value: measured ?? 0,
     limit: declared ?? SPECTRAL_POWER,
     passed,
     explanation: roundOff
