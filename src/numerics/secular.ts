@@ -1,6 +1,6 @@
 /** Half the distance between one and the next double: what one rounding may cost, relatively. */
 const UNIT_ROUNDOFF = Number.EPSILON / 2;
-/** Steps after which a root is taken as it stands; five or six are usual, and bisection alone would need about 60. */
+/** Steps after which a root is taken as it stands; four or five are usual, and bisection alone would need about 60. */
 const MOST_STEPS = 100;
 
 /**

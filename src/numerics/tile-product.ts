@@ -8,7 +8,7 @@ export function panelLength(width: number, depth: number): number {
 
 /**
  * tile_(r, c) = sum_k a_(k, r) b_(k, c) over `depth` entries k, for panels that hold their TILE values of one k side by side, a from
- * `aAt`, b from `bAt` on. Measured: 2.3e9 multiplications and additions a second, six times a loop of row sums.
+ * `aAt`, b from `bAt` on. Measured: two and a half times as fast as a loop over one sum after the other.
  */
 export function multiplyTile(
   tile: Float64Array,
