@@ -79,7 +79,8 @@ export async function packetSpectrum(
 ): Promise<PacketSpectrum> {
   const { levelLeft, levelRight } = design.potential;
   const threshold = Math.max(levelLeft, levelRight);
-  const rows = energies.map((energy) => point(energy, { value: 0, error: 0 }));
+  // The best reading of each energy so far: a narrower packet is no gain where only rounding is left.
+  const best = energies.map((energy): Bounded => ({ value: 0, error: energy > threshold ? 1 : 0 }));
   const packets: SpectrumPacket[] = [];
   let open = energies.map((_, i) => i).filter((i) => energies[i] > threshold);
   let floor = 0;
@@ -91,10 +92,7 @@ export async function packetSpectrum(
     for (const group of grouped(open, energies, threshold, purity)) {
       const plan = planFor(design, group.k0, purity);
       const pilotWork = work(plan, REFINEMENTS[0]);
-      if (alignedPoints(plan.stretches, 1) > POINTS_LIMIT || pilotWork > RUN_LIMIT) {
-        for (const i of group.members) rows[i] = point(energies[i], { value: 0, error: 1 });
-        continue;
-      }
+      if (alignedPoints(plan.stretches, 1) > POINTS_LIMIT || pilotWork > RUN_LIMIT) continue;
       options.onProgress?.(`spectrum, packet of ${plan.from.energy.toPrecision(4)} eV`);
       spent += pilotWork;
       const asked = group.members.map((i) => energies[i]);
@@ -111,17 +109,18 @@ export async function packetSpectrum(
         options,
       );
       spent += read.work;
-      // A resonance moves with the spacing, and may turn out to ring longer on a finer grid than on the pilot's.
-      const stands = keep.filter((_, i) => read.settled[i] || last(plan));
-      unsettled.push(...keep.filter((n) => !stands.includes(n)).map((n) => group.members[n]));
-      for (const n of stands) rows[group.members[n]] = point(asked[n], read.transmission[keep.indexOf(n)]);
-      if (stands.length === 0) continue;
+      keep.forEach((n, i) => {
+        const member = group.members[n];
+        if (read.transmission[i].error < best[member].error) best[member] = read.transmission[i];
+        // A resonance moves with the spacing, and may turn out to ring longer on a finer grid than on the pilot's.
+        if (!read.settled[i] && !last(plan)) unsettled.push(member);
+      });
       floor = Math.max(floor, read.floor);
-      packets.push({ ...read.packet, energies: stands.length });
+      packets.push({ ...read.packet, energies: keep.length });
     }
     open = unsettled;
   }
-  return { rows, packets, floor };
+  return { rows: energies.map((energy, i) => point(energy, best[i])), packets, floor };
 }
 
 function point(energy: number, transmission: Bounded): SpectrumPoint {
