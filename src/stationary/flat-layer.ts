@@ -3,6 +3,8 @@ import { type Element, type TransferChain, UNIT_ROUNDOFF as U } from "./chain.js
 
 /** Exponents kappa w up to here stay far from overflow even after products with their neighbours. */
 const UNSCALED = 200;
+/** Exponents kappa w from here on have their growing and their decaying part carried apart. */
+const THICK = 2;
 /** 2/hbar^2, 1/(eV^2 fs^2). */
 const TWO_OVER_HBAR2 = 2 / (HBAR * HBAR);
 
@@ -17,6 +19,8 @@ export interface Flat {
 /**
  * Exact transfer through a flat layer of width w: with u = 2 (V - E)/hbar^2, z = m u w^2, C = cosh sqrt z and
  * S = sinh(sqrt z)/sqrt z (cos and sin for z < 0), M = [[C, m w S], [u w S, C]].
+ *
+ * Thick walls, see `thick`, take M in factors.
  *
  * Bounds: every rounding of V - E, of the width (a difference of two rounded places) and of the constants is a change of z, and enters by
  * dC/dz = S/2, dS/dz = (C - S)/(2z); what the last operations round is added to the entries themselves.
@@ -37,6 +41,7 @@ export function flatLayer({ left, right, value, mass }: Flat): Element {
   };
 }
 
+/** C and S themselves where the layer is thin; else the growing and the decaying part apart. */
 function evanescent(
   chain: TransferChain,
   z: number,
@@ -47,20 +52,37 @@ function evanescent(
   slack: number,
 ): void {
   const r = Math.sqrt(z);
-  let exponent = 0;
-  let C: number;
-  let S: number;
-  if (r < UNSCALED) {
-    C = Math.cosh(r);
-    S = Math.sinh(r) / r;
-  } else {
-    // exp(r)/2 alone is left of both; its rounding, r units, is part of zSlack.
-    exponent = Math.floor(r / Math.LN2);
-    C = 0.5 * Math.exp(r - exponent * Math.LN2);
-    S = C / r;
+  if (r < THICK) {
+    const C = Math.cosh(r);
+    const S = r === 0 ? 1 : Math.sinh(r) / r;
+    const dS = r < 0.3 ? 0.18 : Math.abs(C - S) / (2 * z);
+    write(chain.next(), chain, C, S, dS, zSlack, mw, uw, uwSlack, slack);
+    return;
   }
-  const dS = r < 0.3 ? 0.18 : Math.abs(C - S) / (2 * z);
-  write(chain.next(exponent, 0), chain, C, S, dS, zSlack, mw, uw, uwSlack, slack);
+  thick(chain, r, (0.5 * zSlack) / r, r / mw, 8 * U + (0.5 * uwSlack) / uw);
+}
+
+/**
+ * M = P diag(exp r, exp -r) P^-1 with P = [[1, -1/(2s)], [s, 1/2]], s = kappa/m, as three matrices of determinant 1. Near a resonance the wave dies out
+ * towards the near side, and what M would leave of C psi + m w S eta is the small difference of large numbers. Here the growing part
+ * psi/2 + eta/(2s) is that difference, once for psi and eta together, so that its rounding is a shift of the resonance and nothing else.
+ *
+ * @param rSlack absolute uncertainty of r; `sSlack` relative one of s
+ */
+function thick(chain: TransferChain, r: number, rSlack: number, s: number, sSlack: number): void {
+  const exponent = r < UNSCALED ? 0 : Math.floor(r / Math.LN2);
+  const growing = Math.exp(r - exponent * Math.LN2);
+  const decaying = Math.exp(-r - exponent * Math.LN2);
+  const error = rSlack + 4 * U * (1 + r);
+  const into = chain.next();
+  chain.entries.set([0.5, 0.5 / s, -s, 1], into);
+  chain.bounds.set([0, (0.5 / s) * (sSlack + 2 * U), s * sSlack, 0], into);
+  const across = chain.next(exponent);
+  chain.entries.set([growing, 0, 0, decaying], across);
+  chain.bounds.set([growing * error, 0, 0, decaying * error], across);
+  const out = chain.next();
+  chain.entries.set([1, -0.5 / s, s, 0.5], out);
+  chain.bounds.set([0, (0.5 / s) * (sSlack + 2 * U), s * sSlack, 0], out);
 }
 
 function oscillating(
