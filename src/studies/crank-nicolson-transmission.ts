@@ -183,20 +183,23 @@ function summary(
   const drift = Math.max(...outcomes.map((o) => o.outcome.drift));
   // Each calculation carries the drift of its norm as a relative error; the extrapolation adds them with weights below 30.
   const rounding = Math.min(1, 30 * (drift + Number.EPSILON * Math.sqrt(plan.steps)));
-  const value = Math.min(1, Math.max(0, t.value));
-  const reflected = Math.min(1, Math.max(0, r.value));
-  const roundOff = value * rounding + roundingFloor(plan.steps);
+  const small = Math.min(1, Math.max(0, Math.min(t.value, r.value)));
+  // Shares of one norm: the larger is what the smaller leaves, with an error no larger.
+  const [value, reflected] = t.value < r.value ? [small, 1 - small] : [1 - small, small];
+  const floor = roundingFloor(plan.steps);
+  // Into a weak reflection the noise of the strong wave gets without a barrier between: amplitudes add.
+  const mixed = value > reflected ? 2 * Math.sqrt(small * floor) : 0;
+  const roundOff = small * rounding + mixed + floor;
   const remaining = outcome.unfinished;
   const start = startError(plan.from, value);
+  const error = spacing + remaining + start + roundOff;
+  const asLarger = (x: number) => (x === small ? 0 : 2 * Number.EPSILON);
   const { widest, finest, length } = extent(plan, refinement);
   return {
     stepper: crankNicolson.name,
     order: plan.order,
-    transmission: { value, error: spacing + remaining + start + roundOff },
-    reflection: {
-      value: reflected,
-      error: Math.max(spacing, Math.min(1, r.error)) + remaining + start + reflected * rounding,
-    },
+    transmission: { value, error: error + asLarger(value) },
+    reflection: { value: reflected, error: error + asLarger(reflected) },
     remaining,
     normDrift: drift,
     grid: {
