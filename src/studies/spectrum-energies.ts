@@ -2,6 +2,7 @@ import { scaleLinear } from "d3-scale";
 import { departure } from "../grid/journey.js";
 import { kineticEnergy } from "../packets/gaussian.js";
 import type { Design } from "../problem/design.js";
+import { resonancesBetween } from "../stationary/resonances-between.js";
 import { formatQuantity } from "../units/quantity.js";
 import { DesignLimitError } from "./limits.js";
 
@@ -73,12 +74,26 @@ export function packetRange(design: Design): readonly [low: number, high: number
   return [Math.max(least, energyOf(k0 - COVERED_SPREADS * spread)), energyOf(k0 + COVERED_SPREADS * spread)];
 }
 
-/** About a hundred round energies over the packet's own, for whoever asks for none. */
+/** Offsets from a resonance, in its widths, at which a spectrum of our own choice looks at it too: a peak is else drawn through its neighbours. */
+const ON_RESONANCE = [-1, -0.5, -0.25, 0, 0.25, 0.5, 1];
+/** A resonance narrower than this share of the distance between two energies is marked, but not drawn: it would take packets of its own. */
+const DRAWN_WIDTH = 0.25;
+
+/** About a hundred round energies over the packet's own, and more where a resonance rises and falls between them, for whoever asks for none. */
 export function packetEnergies(design: Design): number[] {
+  const { potential, particleMass } = design;
   const [low, high] = packetRange(design);
   const least = threshold(design);
-  return scaleLinear()
+  const even = scaleLinear()
     .domain([low, high])
     .ticks(DEFAULT_ENERGIES - 1)
     .filter((energy) => energy > least);
+  const step = even[1] - even[0];
+  const [first, last] = [even[0], even[even.length - 1]];
+  const level = potential.levelLeft;
+  const onPeaks = resonancesBetween(potential, particleMass, first + level, last + level)
+    .filter(({ width }) => width > DRAWN_WIDTH * step && width < step / DRAWN_WIDTH)
+    .flatMap(({ energy, width }) => ON_RESONANCE.map((offset) => energy - level + offset * width))
+    .filter((energy) => energy > first && energy < last);
+  return [...new Set([...even, ...onPeaks])].sort((a, b) => a - b);
 }
