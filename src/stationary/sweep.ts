@@ -37,8 +37,8 @@ export interface Sweep {
   readonly nearVelocity: number;
   readonly farVelocity: number;
   /**
-   * Phase (rad) that the wave gathers from the near face to the far face, or where it cannot leave the phase of the reflected
-   * wave, halved: grows by pi across a narrow resonance, whichever way the wave decays.
+   * Phase (rad) between the incoming wave at the near face and the outgoing one at the far face, or where nothing can leave half that of the reflected
+   * wave: grows by pi across a narrow resonance, whichever way it decays, and elsewhere as slowly as that of a free wave.
    */
   readonly phase: number;
 }
@@ -90,8 +90,8 @@ export class Sweeper {
       phaseError: 1.1 * (outer / incomingSize + inner.phaseError),
       nearVelocity: v,
       farVelocity: far > 0 ? vFar : 0,
-      // With a real psi its zeros are half turns, and psi + i eta/v fills in between them.
-      phase: far > 0 ? phase : phase - Math.atan(er / pr),
+      // From psi, which may have a node at this face, to A: arg(1 + i eta/(v psi)), never beyond a quarter turn.
+      phase: phase - Math.atan2(pr * er + pi * ei, pr * pr + pi * pi - (pr * ei - pi * er)),
     };
   }
 
