@@ -1,7 +1,7 @@
 import type { Crosscheck } from "../studies/crosscheck.js";
 
 /** Height of a crosscheck's figure over its width: a panel over time, and one of differences. */
-export const CROSSCHECK_HEIGHT_RATIO = 0.95;
+export const CROSSCHECK_HEIGHT_RATIO = 1.05;
 
 /** How a crosscheck is drawn. */
 export interface CrosscheckFigureOptions {

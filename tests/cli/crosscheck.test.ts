@@ -77,7 +77,7 @@ describe("postern crosscheck", () => {
         expect(Math.abs(one - other)).toBeLessThan(1e-4);
       }
       const { width, height } = PNG.sync.read(readFileSync(path("results/crosscheck.png")));
-      expect([width, height]).toEqual([1890, 1795]);
+      expect([width, height]).toEqual([1890, 1984]);
     },
     PATIENCE,
   );
