@@ -29,11 +29,11 @@ export function amplitudeAtFace({ distance, packet }: Departure): number {
 
 /**
  * What the part of the packet that lies beyond the near face from the start (probability P) may add to or take from the
- * transmission T: P + 2 sqrt(T P), as amplitudes add.
+ * transmission T: 4 (P + sqrt(T P)). Without it the amplitude is another by sqrt(P) at most, once for itself and once for the norm.
  */
 export function startError(from: Departure, transmitted: number): number {
   const beyond = beyondFace(from);
-  return beyond + 2 * Math.sqrt(Math.max(0, transmitted) * beyond);
+  return 4 * (beyond + Math.sqrt(Math.max(0, transmitted) * beyond));
 }
 
 /** Distance between the faces, nm. */
