@@ -5,9 +5,9 @@ import { root, workplace } from "./run.js";
 
 const { postern } = workplace();
 const manifest = JSON.parse(readFileSync(join(root, "package.json"), "utf8"));
-const COMMANDS = ["estimate", "spectrum", "map", "validate", "potentials"];
+const COMMANDS = ["estimate", "crosscheck", "spectrum", "map", "validate", "potentials"];
 const LIST =
-  'Commands: estimate, spectrum, map, validate, potentials. Run "postern --help" for what they do.';
+  'Commands: estimate, crosscheck, spectrum, map, validate, potentials. Run "postern --help" for what they do.';
 
 describe("postern", () => {
   it("prints its version", () => {
@@ -29,6 +29,7 @@ describe("postern", () => {
 
       Commands:
         estimate [options] <FILE>    transmission and reflection with bounds and a verdict
+        crosscheck [options] <FILE>  both steppers and a stationary witness, side by side
         spectrum [options] <FILE>    transmission against energy, with a bound at each
         map [options] <FILE>         the density over space and time as a figure
         validate [options] <FILE>    the design in full, with what is chosen automatically
