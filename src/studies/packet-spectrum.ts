@@ -6,7 +6,7 @@ import type { Bounded } from "../units/bounded.js";
 import type { StudyOptions } from "./calculation.js";
 import { type ClosedPlan, extent, planClosed } from "./closed-plan.js";
 import { amplitudeAtFace } from "./common-checks.js";
-import { REFINEMENTS } from "./crank-nicolson-transmission.js";
+import { LEAST_SPACING_SHARE, REFINEMENTS } from "./crank-nicolson-transmission.js";
 import { type FaceRun, faceRun } from "./face-run.js";
 import { POINTS_LIMIT } from "./limits.js";
 
@@ -213,6 +213,7 @@ async function refined(
         x.error / x.value,
         l.error,
         CAUTION * Math.abs(Math.exp(l.value) * x.value - 1),
+        LEAST_SPACING_SHARE * accuracy,
       );
       return relative >= 0 ? relative : Number.POSITIVE_INFINITY;
     });
