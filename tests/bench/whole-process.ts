@@ -3,14 +3,20 @@ import { readFileSync } from "node:fs";
 import { interpreterFor } from "./python.js";
 import { type Spread, spread } from "./rounds.js";
 
-/** Wall time of a whole process, start-up included, in seconds, over some runs. */
-export function wallTime(program: string, args: readonly string[], runs: number): Spread {
+/** Wall time of a whole process, start-up included, in seconds, over some runs that end with one of `statuses`. */
+export function wallTime(
+  program: string,
+  args: readonly string[],
+  runs: number,
+  statuses: readonly number[] = [0],
+): Spread {
   const seconds: number[] = [];
   for (let i = 0; i < runs; i++) {
     const begin = performance.now();
     const run = spawnSync(program, args, { stdio: ["ignore", "ignore", "pipe"], encoding: "utf8" });
     seconds.push((performance.now() - begin) / 1000);
-    if (run.status !== 0) throw new Error(`${program} ${args.join(" ")}: exit ${run.status}\n${run.stderr}`);
+    if (!statuses.includes(run.status ?? -1))
+      throw new Error(`${program} ${args.join(" ")}: exit ${run.status}\n${run.stderr}`);
   }
   return spread(seconds);
 }
@@ -32,7 +38,8 @@ export async function peakMemory(
   const python = interpreterFor("import resource, subprocess");
   if (python === undefined) return { megabytes: await polledPeak(program, args), how: "/proc" };
   const run = spawnSync(python, ["-c", account, program, ...args], { encoding: "utf8" });
-  if (run.status !== 0) throw new Error(`${program} ${args.join(" ")}: exit ${run.status}\n${run.stderr}`);
+  if (!statuses.includes(run.status ?? -1))
+    throw new Error(`${program} ${args.join(" ")}: exit ${run.status}\n${run.stderr}`);
   // Linux counts in units of 1024 bytes, macOS in bytes (getrusage(2) of either).
   const unit = process.platform === "darwin" ? 1 : 1024;
   return { megabytes: (Number(run.stdout) * unit) / 1e6, how: "getrusage" };
