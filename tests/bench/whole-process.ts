@@ -38,8 +38,7 @@ export async function peakMemory(
   const python = interpreterFor("import resource, subprocess");
   if (python === undefined) return { megabytes: await polledPeak(program, args), how: "/proc" };
   const run = spawnSync(python, ["-c", account, program, ...args], { encoding: "utf8" });
-  if (!statuses.includes(run.status ?? -1))
-    throw new Error(`${program} ${args.join(" ")}: exit ${run.status}\n${run.stderr}`);
+  if (run.status !== 0) throw new Error(`${program} ${args.join(" ")}: exit ${run.status}\n${run.stderr}`);
   // Linux counts in units of 1024 bytes, macOS in bytes (getrusage(2) of either).
   const unit = process.platform === "darwin" ? 1 : 1024;
   return { megabytes: (Number(run.stdout) * unit) / 1e6, how: "getrusage" };
