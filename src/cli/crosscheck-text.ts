@@ -5,6 +5,7 @@ import { stateError } from "../studies/motion.js";
 import type { Bounded } from "../units/bounded.js";
 import { concise } from "../units/concise.js";
 import { formatQuantity } from "../units/quantity.js";
+import { short } from "./checks-text.js";
 import { bold, COLUMNS, table, wrap } from "./terminal.js";
 
 /** The answer of `postern crosscheck` as text. */
@@ -86,9 +87,3 @@ function verdict({ agree, firstDisagreement, checks, steppers, witness, differen
 }
 
 const bounded = ({ value, error }: Bounded): string => concise(value, error);
-
-/** Two significant digits: enough for a size. */
-function short(value: number): string {
-  const rounded = Number(value.toPrecision(2));
-  return rounded !== 0 && Math.abs(rounded) < 1e-3 ? rounded.toExponential() : String(rounded);
-}

@@ -1,7 +1,7 @@
-import type { Check } from "../studies/calculation.js";
 import type { Estimate } from "../studies/estimate.js";
 import { concise } from "../units/concise.js";
 import { formatQuantity } from "../units/quantity.js";
+import { checkRow, short, verdictText } from "./checks-text.js";
 import { bold, COLUMNS, table, wrap } from "./terminal.js";
 
 /** A share of the packet that moves away from the start is told from here on: it is part of the reflection. */
@@ -16,7 +16,11 @@ export function estimateText(answer: Estimate): string {
     numerics(answer),
     `checks\n${table(answer.checks.map(checkRow), "  ")}`,
     ...answer.notes.map((note) => wrap(`note: ${note}`, COLUMNS, "      ")),
-    verdictText(answer),
+    verdictText(
+      answer.verdict,
+      answer.checks,
+      `the bound is ${short(answer.accuracy.reached)} of the transmission, ${short(answer.accuracy.asked)} was asked for`,
+    ),
   ];
   return parts.join("\n\n");
 }
@@ -64,29 +68,6 @@ function numerics(answer: Estimate): string {
 
 const timeOrder = ({ order }: Estimate) => (order === "exact" ? "exact in time" : `order ${order}`);
 
-function checkRow({ name, value, limit, passed }: Check): string[] {
-  return [passed ? "passed" : "FAILED", name, short(value), `limit ${short(limit)}`];
-}
-
-function verdictText({ verdict, checks, accuracy }: Estimate): string {
-  if (verdict === "trusted") {
-    const reached = `the bound is ${short(accuracy.reached)} of the transmission, ${short(accuracy.asked)} was asked for`;
-    return `${bold("trusted")}: all checks passed; ${reached}`;
-  }
-  const reasons = checks
-    .filter(({ passed }) => !passed)
-    .map(({ name, value, limit, explanation }) =>
-      wrap(`  ${name} is ${short(value)}, above its limit ${short(limit)}: ${explanation}`, COLUMNS, "    "),
-    );
-  return [`${bold("doubtful")}:`, ...reasons].join("\n");
-}
-
 const bounded = ({ value, error }: { value: number; error: number }): string => concise(value, error);
 
 const energy = (value: number, digits: number): string => formatQuantity(value, "energy", undefined, digits);
-
-/** Two significant digits: enough for a size. */
-function short(value: number): string {
-  const rounded = Number(value.toPrecision(2));
-  return rounded !== 0 && Math.abs(rounded) < 1e-3 ? rounded.toExponential() : String(rounded);
-}

@@ -1,8 +1,8 @@
-import type { Check } from "../studies/calculation.js";
 import type { Spectrum } from "../studies/spectrum.js";
 import type { SpectrumRow } from "../studies/spectrum-row.js";
 import { concise } from "../units/concise.js";
 import { formatQuantity } from "../units/quantity.js";
+import { checkRow, short, verdictText } from "./checks-text.js";
 import { bold, COLUMNS, table, wrap } from "./terminal.js";
 
 /** Most rows of the table in a terminal: as many as are read rather than searched. */
@@ -21,7 +21,11 @@ export function spectrumText(answer: Spectrum, filed: boolean): string {
     floorText(answer),
     `checks\n${table(answer.checks.map(checkRow), "  ")}`,
     ...answer.notes.map((note) => wrap(`note: ${note}`, COLUMNS, "      ")),
-    verdictText(answer),
+    verdictText(
+      answer.verdict,
+      answer.checks,
+      `every bound is within ${short(answer.accuracy.reached)} of its transmission, ${short(answer.accuracy.asked)} was asked for`,
+    ),
   ];
   return parts.filter((part) => part !== "").join("\n\n");
 }
@@ -92,27 +96,4 @@ function floorText({ method, floor }: Spectrum): string {
   return method === "packet" && floor > 0
     ? `floor  round-off may hide a transmission below ${short(floor)}`
     : "";
-}
-
-function checkRow({ name, value, limit, passed }: Check): string[] {
-  return [passed ? "passed" : "FAILED", name, short(value), `limit ${short(limit)}`];
-}
-
-function verdictText({ verdict, checks, accuracy }: Spectrum): string {
-  if (verdict === "trusted") {
-    const reached = `every bound is within ${short(accuracy.reached)} of its transmission, ${short(accuracy.asked)} was asked for`;
-    return wrap(`${bold("trusted")}: all checks passed; ${reached}`);
-  }
-  const reasons = checks
-    .filter(({ passed }) => !passed)
-    .map(({ name, value, limit, explanation }) =>
-      wrap(`  ${name} is ${short(value)}, above its limit ${short(limit)}: ${explanation}`, COLUMNS, "    "),
-    );
-  return [`${bold("doubtful")}:`, ...reasons].join("\n");
-}
-
-/** Two significant digits: enough for a size. */
-function short(value: number): string {
-  const rounded = Number(value.toPrecision(2));
-  return rounded !== 0 && Math.abs(rounded) < 1e-3 ? rounded.toExponential() : String(rounded);
 }
