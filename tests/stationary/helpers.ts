@@ -41,6 +41,7 @@ export function expectTransmission(
   published: number,
   relative = 5e-15,
   from: "left" | "right" = "left",
+  widest = massInElectrons > 100 ? 1e-11 : 2.5e-12,
 ): void {
   const { transmission, reflection } = scatter(potential, massInElectrons * ELECTRON_MASS, energy, from);
   const context = JSON.stringify({ energy, published, transmission, reflection });
@@ -51,7 +52,5 @@ export function expectTransmission(
     reflection.error + slack + 3e-16,
   );
   // The bound itself stays near what issue 3 asks for. A proton's waves make forty turns inside a chemical barrier, where an electron's make one.
-  expect(transmission.error, context).toBeLessThanOrEqual(
-    (massInElectrons > 100 ? 1e-11 : 2.5e-12) * published,
-  );
+  expect(transmission.error, context).toBeLessThanOrEqual(widest * published);
 }

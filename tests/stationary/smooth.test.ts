@@ -4,7 +4,7 @@ import { shifted } from "../../src/potentials/shifted.js";
 import { scatter } from "../../src/stationary/scattering.js";
 import { ELECTRON_MASS } from "../../src/units/constants.js";
 import { eckart, sech2, slabs, smoothStep, type Transmission } from "../potentials/closed-forms.js";
-import { integrateBetween } from "../potentials/tanh-sinh.js";
+import { between } from "../published/made-potentials.js";
 import { shape } from "./helpers.js";
 
 const logUniform = (low: number, high: number, u: number) => low * (high / low) ** u;
@@ -63,7 +63,7 @@ function draw(next: () => number, mass: number): Case {
   };
 }
 
-describe("smooth shapes against their closed forms (sources as in closed-forms.test.ts)", () => {
+describe("smooth shapes against their closed forms (sources as in tests/published/values-smooth.ts)", () => {
   it("never lets T out of its bound on 400 random shapes, wherever they stand", () => {
     const next = numbers(7_031_994);
     const sizes: number[] = [];
@@ -118,70 +118,7 @@ describe("smooth shapes against their closed forms (sources as in closed-forms.t
   });
 });
 
-/** V and mass given between interfaces, flat outside: what no shape offers yet. nm, eV, m_e. */
-function between(
-  places: readonly number[],
-  value: (x: number) => number,
-  mass: (x: number) => number,
-  scale: number,
-  levelRight = 0,
-): Potential {
-  const [left, right] = [places[0], places[places.length - 1]];
-  const besides = (x: number) => (x < left ? 0 : x > right ? levelRight : value(x));
-  // At a jump the mean of both sides, as the contract of a potential has it.
-  const tiny = 1e-13;
-  const levelled = (x: number) =>
-    places.includes(x) ? (besides(x - tiny) + besides(x + tiny)) / 2 : besides(x);
-  const samples = Array.from({ length: 101 }, (_, i) => value(left + ((right - left) * i) / 100));
-  return {
-    shape: "between",
-    value: levelled,
-    cellAverage: (a, b) => integrateBetween(levelled, a, b, places, b - a) / (b - a),
-    mass: (x) => mass(x) * ELECTRON_MASS,
-    massAverage: (a, b) => (mass(a) + mass(b)) * 0.5 * ELECTRON_MASS,
-    interfaces: places,
-    faces: [left, right],
-    levelLeft: 0,
-    levelRight,
-    lowest: Math.min(0, levelRight, ...samples),
-    highest: Math.max(0, levelRight, ...samples),
-    scale,
-    uniformMass: false,
-    confining: false,
-  };
-}
-
-describe("sloped parts between interfaces (Airy functions; Fowler and Nordheim 1928, Forbes and Deane 2011, from memory)", () => {
-  it.each([
-    [5, 9.5, 8.5, 1, -1, 1, 1, 4.924681336285603e-9],
-    [5, 9.5, 6.5, 1, -3, 1, 1, 7.185326479104102e-8],
-    [5, 9.5, 1.5, 1.6, -8, 1, 1, 2.749844396030486e-6],
-    [0.1, 3.15, 1.15, 2, -2, 0.19, 0.5, 2.00031183524248e-9],
-    [0.1, 3.15, -0.85, 4, -4, 0.19, 0.5, 1.971097318491146e-11],
-    [0.05, 0.2591, 0.1591, 5, -0.1, 0.067, 0.0919, 7.074383130403965e-3],
-    [0.15, 0.2591, 0.1591, 5, -0.1, 0.067, 0.0919, 5.183792908923638e-2],
-  ])(
-    "E = %f, from %f to %f eV over %f nm, then %f eV; masses %f and %f m_e",
-    (E, V1, V2, d, VR, lead, mass, published) => {
-      const trapezoid = between(
-        [0, d],
-        (x) => V1 + ((V2 - V1) * x) / d,
-        (x) => (x > 0 && x < d ? mass : lead),
-        d,
-        VR,
-      );
-      const m = lead * ELECTRON_MASS;
-      const { transmission } = scatter(trapezoid, m, E);
-      // 2e-14: rounding of V1, V2 and d, in exponents of up to twenty.
-      expect(Math.abs(transmission.value - published)).toBeLessThanOrEqual(
-        transmission.error + 2e-14 * published,
-      );
-      expect(transmission.error).toBeLessThan(1e-12 * published);
-      const back = scatter(trapezoid, m, E, "right").transmission;
-      expect(Math.abs(back.value - published)).toBeLessThanOrEqual(back.error + 2e-14 * published);
-    },
-  );
-
+describe("sloped and curved parts between interfaces (those with a closed form are in tests/published)", () => {
   it("follows a mass and a V that both change smoothly, across a kink in between", () => {
     const value = (x: number) => 0.3 * (1 - Math.abs(x - 3) / 3) + 0.05 * Math.sin(x);
     const mass = (x: number) => (x > 0 && x < 6 ? 0.067 + 0.01 * x + 0.02 * Math.cos(x) : 0.067);
