@@ -63,7 +63,7 @@ function estimateRow(
     stepper: answer.stepper,
     points: answer.grid.points,
     steps: answer.time.steps,
-    runs: answer.runs.length,
+    runs: answer.runs.map(({ transmission }) => transmission),
     ...times,
     parts,
     dominant: PARTS.reduce((most: Part, part) => (parts[part] > parts[most] ? part : most), PARTS[0]),

@@ -28,7 +28,8 @@ export interface EstimateRow {
   readonly stepper: string;
   readonly points: number;
   readonly steps: number;
-  readonly runs: number;
+  /** T of each whole calculation, in their order. */
+  readonly runs: readonly number[];
   /** Wall time, and processor time of the whole process: less sensitive to other work on the machine, but shared by threads. */
   readonly seconds: number;
   readonly processor: number;
