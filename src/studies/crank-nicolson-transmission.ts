@@ -1,5 +1,5 @@
 import { alignedGrid, alignedPoints } from "../grid/aligned.js";
-import { CAUTION, Extrapolation } from "../numerics/extrapolation.js";
+import { Extrapolation } from "../numerics/extrapolation.js";
 import type { Design } from "../problem/design.js";
 import { crankNicolson } from "../steppers/crank-nicolson.js";
 import { atMost, type Calculation, type RunSummary, type StudyOptions } from "./calculation.js";
@@ -8,6 +8,7 @@ import { commonChecks, relativeError, startError, structureLength } from "./comm
 import { BRING_CLOSER, POINTS_LIMIT, refuseTooLarge } from "./limits.js";
 import { boundedAtMean, carryingEnergy } from "./mean-energy.js";
 import { LAST_PART, type Outcome, runToEnd } from "./outcome.js";
+import { SpacingBound } from "./spacing-bound.js";
 
 /** Cells of the successive calculations in units of the unrefined grid's. Tuned for least work to 1e-6 on check-values 3.6. */
 export const REFINEMENTS = [1, 2, 3, 4, 5, 6, 8, 10, 12, 16, 20, 24, 32];
@@ -15,11 +16,6 @@ export const REFINEMENTS = [1, 2, 3, 4, 5, 6, 8, 10, 12, 16, 20, 24, 32];
 const FEWEST_CALCULATIONS = 5;
 /** Share of the error asked for that the spacing may take. */
 const SPACING_SHARE = 0.7;
-/**
- * Share of the accuracy below which no bound of the spacing is told: where all changes are small, they can be so by accident. One of 90 random
- * designs had an error of 2e-9 and a bound of 3e-10.
- */
-export const LEAST_SPACING_SHARE = 0.01;
 /** Share of the error asked for that what remains may take. */
 const REMAINING_SHARE = 0.2;
 /** A refined grid may show so much more than the unrefined one before the end is moved out once more: the shares leave room for it. */
@@ -91,7 +87,7 @@ interface Attempt {
   readonly transmission: Extrapolation;
   readonly reflection: Extrapolation;
   readonly atMean: Extrapolation;
-  /** What the spacing leaves of the transmission: the larger bound of two extrapolations, or their distance with caution. */
+  /** What the spacing leaves of the transmission. */
   readonly spacing: number;
 }
 
@@ -107,7 +103,7 @@ async function attemptAt(
   const transmission = new Extrapolation();
   const reflection = new Extrapolation();
   const atMean = new Extrapolation();
-  const logarithm = new Extrapolation();
+  const bound = new SpacingBound(plan.from, accuracy);
   let spacing = 1;
   const outcomes: { refinement: number; outcome: Outcome }[] = [];
   for (const refinement of plan.forced ? [1] : REFINEMENTS) {
@@ -119,17 +115,8 @@ async function attemptAt(
       refinement === REFINEMENTS[0] ? pilot : await outcomeOn(plan, design, refinement, options);
     outcomes.push({ refinement, outcome });
     const t = transmission.add(1 / refinement, outcome.transmitted);
-    const r = reflection.add(1 / refinement, outcome.reflected);
-    // The smaller one of T and R falls exponentially with thickness or smoothness, so its logarithm makes the better series.
-    const [small, direct] =
-      outcomes[0].outcome.transmitted < 0.5 ? [outcome.transmitted, t] : [outcome.reflected, r];
-    const l = logarithm.add(1 / refinement, Math.log(Math.max(small, Number.MIN_VALUE)));
-    const second = Math.exp(l.value);
-    const least = LEAST_SPACING_SHARE * accuracy * Math.min(t.value, r.value);
-    spacing = Math.min(
-      1,
-      Math.max(t.error, second * l.error, CAUTION * Math.abs(direct.value - second), least),
-    );
+    reflection.add(1 / refinement, outcome.reflected);
+    spacing = bound.add(1 / refinement, outcome);
     atMean.add(1 / refinement, outcome.transmissionAt(plan.from.energy) ?? 0);
     if (!held && prolonged(design, plan, outcome, accuracy, SLACK)) break;
     // Where too much remains for good, the grid need not be better than that.

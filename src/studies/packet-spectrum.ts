@@ -1,12 +1,12 @@
 import { alignedPoints } from "../grid/aligned.js";
-import { CAUTION, Extrapolation } from "../numerics/extrapolation.js";
+import { ALONE, Extrapolation } from "../numerics/extrapolation.js";
 import { kineticEnergy, wavenumberOf } from "../packets/gaussian.js";
 import type { Design } from "../problem/design.js";
 import type { Bounded } from "../units/bounded.js";
 import type { StudyOptions } from "./calculation.js";
 import { type ClosedPlan, extent, planClosed } from "./closed-plan.js";
 import { amplitudeAtFace } from "./common-checks.js";
-import { LEAST_SPACING_SHARE, REFINEMENTS } from "./crank-nicolson-transmission.js";
+import { REFINEMENTS } from "./crank-nicolson-transmission.js";
 import { type FaceRun, faceRun } from "./face-run.js";
 import { POINTS_LIMIT } from "./limits.js";
 
@@ -52,8 +52,15 @@ const NARROWING = 2;
 const RECORD_LENGTH = 1.8;
 /** Shares of the error asked for that the end and the spacing may take. */
 const UNFINISHED_SHARE = 0.1;
+/** Below this an amplitude that a narrower packet does not lower is rounding; so much of rounding is seen in units of eps times the root of the steps. */
+const STALLED_BELOW = 1e-8;
+const ROUNDING_SEEN = 300;
 const SPACING_SHARE = 0.7;
 const FEWEST_CALCULATIONS = 5;
+/** Share of the accuracy asked for below which no bound of the spacing is told: small changes can be small by accident. */
+const LEAST_BOUND = 0.01;
+/** Further caution with the bound of a single energy, which has no parts to be held against: its errors are far below what is asked for anyway. */
+const FURTHER_CAUTION = 2;
 /** Work (nodes times steps) of one calculation, and of all of them, beyond which nothing is refined or tried again. */
 const RUN_LIMIT = 2e8;
 const TOTAL_LIMIT = 1.5e9;
@@ -81,6 +88,8 @@ export async function packetSpectrum(
   const threshold = Math.max(levelLeft, levelRight);
   // The best reading of each energy so far: a narrower packet is no gain where only rounding is left.
   const best = energies.map((energy): Bounded => ({ value: 0, error: energy > threshold ? 1 : 0 }));
+  // What the last pilot left unfinished at each energy: where a narrower packet left no less, only rounding is left.
+  const seen = energies.map(() => Number.POSITIVE_INFINITY);
   const packets: SpectrumPacket[] = [];
   let open = energies.map((_, i) => i).filter((i) => energies[i] > threshold);
   let floor = 0;
@@ -97,8 +106,15 @@ export async function packetSpectrum(
       spent += pilotWork;
       const asked = group.members.map((i) => energies[i]);
       const pilot = await faceRun(plan, design, REFINEMENTS[0], asked, options);
-      const settled = (n: number) => pilot.at[n].unfinished <= UNFINISHED_SHARE * accuracy;
-      const keep = group.members.map((_, n) => n).filter((n) => settled(n) || last(plan));
+      const keep = group.members
+        .map((_, n) => n)
+        .filter((n) => {
+          const { unfinished } = pilot.at[n];
+          const member = group.members[n];
+          const stalled = unfinished < STALLED_BELOW && unfinished > 0.5 * seen[member];
+          seen[member] = unfinished;
+          return unfinished <= tolerated(UNFINISHED_SHARE * accuracy, plan) || stalled || last(plan);
+        });
       unsettled.push(...group.members.filter((_, n) => !keep.includes(n)));
       if (keep.length === 0) continue;
       const read = await refined(
@@ -125,6 +141,11 @@ export async function packetSpectrum(
 
 function point(energy: number, transmission: Bounded): SpectrumPoint {
   return { energy, transmission, reflection: { value: 1 - transmission.value, error: transmission.error } };
+}
+
+/** What the end may leave, relative: a share of what is asked for, or what nobody could tell from rounding. */
+function tolerated(share: number, plan: ClosedPlan): number {
+  return Math.max(share, ROUNDING_SEEN * Number.EPSILON * Math.sqrt(plan.steps));
 }
 
 interface Group {
@@ -212,10 +233,10 @@ async function refined(
       const relative = Math.max(
         x.error / x.value,
         l.error,
-        CAUTION * Math.abs(Math.exp(l.value) * x.value - 1),
-        LEAST_SPACING_SHARE * accuracy,
+        ALONE.factor * Math.abs(Math.exp(l.value) * x.value - 1),
+        LEAST_BOUND * accuracy,
       );
-      return relative >= 0 ? relative : Number.POSITIVE_INFINITY;
+      return relative >= 0 ? FURTHER_CAUTION * relative : Number.POSITIVE_INFINITY;
     });
     if (runs >= FEWEST_CALCULATIONS && spacing.every((s) => s <= SPACING_SHARE * accuracy)) break;
   }
@@ -230,13 +251,16 @@ async function refined(
     floor = Math.max(floor, leaked * leaked);
     const value = 1 / inverse[i].result.value;
     const unfinished = run?.at[i].unfinished ?? Number.POSITIVE_INFINITY;
-    const relative = spacing[i] + unfinished + 30 * (noise * faded + drift);
+    const grid = runs < FEWEST_CALCULATIONS ? Number.POSITIVE_INFINITY : spacing[i];
+    const relative = grid + unfinished + 30 * (noise * faded + drift);
     return bounded(value, value * relative + leaked * (2 * Math.sqrt(Math.abs(value)) + leaked));
   });
   const { widest } = extent(plan, REFINEMENTS[runs - 1]);
   return {
     transmission,
-    settled: energies.map((_, i) => (run?.at[i].unfinished ?? 1) <= (1 - SPACING_SHARE) * accuracy),
+    settled: energies.map(
+      (_, i) => (run?.at[i].unfinished ?? 1) <= tolerated((1 - SPACING_SHARE) * accuracy, plan),
+    ),
     floor,
     work: spent,
     packet: {

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { CAUTION, Extrapolation } from "../../src/numerics/extrapolation.js";
+import { ALONE, Extrapolation } from "../../src/numerics/extrapolation.js";
 
 /** Spacings of the Crank-Nicolson study, relative to its first. */
 const CELLS = [1, 2, 3, 4, 6, 8];
@@ -36,7 +36,7 @@ describe("extrapolation to vanishing spacing", () => {
     // 4 + (4 - 5) / (4 - 1), which changes the row's last by 1/3.
     const { value, error } = tableau.add(0.5, 4);
     expect(value).toBeCloseTo(4 - 1 / 3, 15);
-    expect(error).toBeCloseTo(CAUTION / 3, 14);
+    expect(error).toBeCloseTo(ALONE.factor / 3, 14);
     expect(tableau.result).toEqual({ value, error });
   });
 
