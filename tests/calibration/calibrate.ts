@@ -1,9 +1,12 @@
 /**
  * `npm run calibrate -- --designs N --seed S`: random designs through estimate and spectrum, held against the stationary
  * witness. Measures the bounds: how often the truth lies within, how much wider than the actual error they are, and what they cost.
- * The same seed draws the same designs, whatever their number and the number of workers. Exits 1 when a bound was escaped or a design crashed.
+ * The same seed draws the same designs, whatever their number and the number of workers. Exits 1 when a bound was escaped or a design crashed, 130 when
+ * it was interrupted, with the figures of what was measured.
  */
+import { appendFileSync, mkdirSync, writeFileSync } from "node:fs";
 import { availableParallelism } from "node:os";
+import { dirname, join } from "node:path";
 import { Command, InvalidArgumentError, Option } from "commander";
 import { drawDesign } from "./draw-design.js";
 import type { Family } from "./drawn-design.js";
@@ -13,6 +16,9 @@ import type { Row } from "./row.js";
 import { figuresOf } from "./statistics.js";
 import { measureInWorkers } from "./workers.js";
 import { worstOf, writeWorst } from "./worst.js";
+
+/** Every row of a run as a line of JSON, beside the worst designs. */
+const ROWS_FILE = "rows.jsonl";
 
 interface Options {
   readonly designs: number;
@@ -47,31 +53,43 @@ const program = new Command("calibrate")
       .default("both"),
   )
   .option("--patience <seconds>", "stop a calculation after this long", whole(1), 120)
-  .option("--workers <n>", `threads, up to ${availableParallelism()} here`, whole(1), 1)
-  .option("--out <dir>", "write the ten worst designs there as files")
+  .option("--workers <n>", `processes, up to ${availableParallelism()} here`, whole(1), 1)
+  .option("--out <dir>", "write every row and the ten worst designs there as files")
   .option("--json", "print one JSON document with every row");
 
 const options = program.parse().opts<Options>();
+const { seed, out, only } = options;
 const indices = Array.from({ length: options.designs }, (_, i) => options.first + i);
-const progress = process.stderr.isTTY
-  ? (done: number) => process.stderr.write(`\r${done} of ${indices.length} designs`)
-  : () => undefined;
+const rows: Row[] = [];
+const file = out === undefined ? undefined : join(out, ROWS_FILE);
+if (file !== undefined) {
+  mkdirSync(dirname(file), { recursive: true });
+  writeFileSync(file, "");
+}
 
-const rows = options.workers > 1 ? await measureInWorkers(indices, options, progress) : await measureHere();
+/** Rows are on disk as soon as they are measured: hours of work outlive whatever ends the process. */
+function take(row: Row): void {
+  rows.push(row);
+  if (file !== undefined) appendFileSync(file, `${JSON.stringify(row)}\n`);
+  if (process.stderr.isTTY) process.stderr.write(`\r${rows.length} of ${indices.length} designs`);
+}
+
+// The first signal ends the run with what was measured, the second one at once.
+const ending = new AbortController();
+for (const signal of ["SIGINT", "SIGTERM"] as const) process.once(signal, () => ending.abort());
+
+if (options.workers > 1) await measureInWorkers(indices, options, take, ending.signal);
+else
+  for (const index of indices) {
+    if (ending.signal.aborted) break;
+    take(await measure(drawDesign(seed, index, only), options));
+  }
+rows.sort((a, b) => a.index - b.index);
 if (process.stderr.isTTY) process.stderr.write("\n");
 const figures = figuresOf(rows);
-const { seed, out } = options;
 if (options.json) process.stdout.write(`${JSON.stringify({ seed, figures, rows })}\n`);
 else process.stdout.write(figuresText(figures, seed));
 if (out !== undefined)
   for (const path of writeWorst(worstOf(rows), out)) process.stderr.write(`wrote ${path}\n`);
 if (figures.escapes.length > 0 || figures.outcomes.crashed > 0) process.exitCode = 1;
-
-async function measureHere(): Promise<Row[]> {
-  const measured: Row[] = [];
-  for (const index of indices) {
-    measured.push(await measure(drawDesign(options.seed, index, options.only), options));
-    progress(measured.length);
-  }
-  return measured;
-}
+if (ending.signal.aborted) process.exitCode = 130;

@@ -1,4 +1,4 @@
-import type { EstimateFigures, Figures, Held, Served, Spread } from "./statistics.js";
+import type { EstimateFigures, Figures, Held, Served, SpectrumFigures, Spread } from "./statistics.js";
 import { LONG_LIFETIME } from "./statistics.js";
 
 const percent = (part: number, whole: number) => `${((100 * part) / Math.max(1, whole)).toFixed(1)} %`;
@@ -16,18 +16,24 @@ export function figuresText(figures: Figures, seed: number): string {
     `${designs} designs of seed ${seed}: ${outcomes.answered} answered, ${outcomes.refused} refused, ${outcomes.stopped} stopped, ${outcomes.crashed} crashed`,
     `transmissions by decade, from 1 down: ${decades.join(" ")}`,
     ...(figures.estimate ? estimateLines(figures.estimate) : []),
-    ...(figures.spectrum
-      ? [
-          "",
-          "spectrum by packet",
-          ...heldLines("transmission", figures.spectrum.transmission),
-          ...heldLines("reflection", figures.spectrum.reflection),
-          `  time a design        ${milliseconds(figures.spectrum.seconds)}`,
-        ]
-      : []),
+    ...(figures.spectrum ? spectrumLines(figures.spectrum) : []),
   ];
   if (escapes.length > 0) lines.push("", `ESCAPED: designs ${escapes.join(", ")}`);
   return `${lines.join("\n")}\n`;
+}
+
+function spectrumLines({ transmission, reflection, depths, seconds }: SpectrumFigures): string[] {
+  return [
+    "",
+    "spectrum by packet",
+    ...heldLines("transmission", transmission),
+    ...depths.map(
+      ({ least, within, compared, met }) =>
+        `    from T = 1 to ${least.toExponential()}: within ${within.toExponential()} of the witness ${met} of ${compared}, ${percent(met, compared)}`,
+    ),
+    ...heldLines("reflection", reflection),
+    `  time a design        ${milliseconds(seconds)}`,
+  ];
 }
 
 function heldLines(what: string, { compared, escaped, ratio: r, floored, accurate }: Held): string[] {

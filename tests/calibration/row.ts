@@ -30,7 +30,7 @@ export interface EstimateRow {
   readonly steps: number;
   /** T of each whole calculation, in their order. */
   readonly runs: readonly number[];
-  /** Wall time, and processor time of the whole process: less sensitive to other work on the machine, but shared by threads. */
+  /** Wall time, and processor time, which is less sensitive to other work on the machine. */
   readonly seconds: number;
   readonly processor: number;
   readonly parts: Readonly<Record<Part, number>>;

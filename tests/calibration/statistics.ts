@@ -71,6 +71,25 @@ export interface EstimateFigures {
   }[];
 }
 
+export interface SpectrumFigures {
+  readonly transmission: Held;
+  readonly reflection: Held;
+  /** Of the transmissions down to a depth, those within a relative distance of the witness. */
+  readonly depths: readonly {
+    readonly least: number;
+    readonly within: number;
+    readonly compared: number;
+    readonly met: number;
+  }[];
+  readonly seconds: Spread;
+}
+
+/** What is asked of a spectrum by packet: within the second number of the witness from T = 1 down to the first. */
+const DEPTHS = [
+  [1e-18, 1e-6],
+  [1e-24, 1e-3],
+] as const;
+
 /** All figures of a run. */
 export interface Figures {
   readonly designs: number;
@@ -79,11 +98,7 @@ export interface Figures {
   /** How many of the compared transmissions lie in each decade, from 1 downward. */
   readonly decades: readonly number[];
   readonly estimate?: EstimateFigures;
-  readonly spectrum?: {
-    readonly transmission: Held;
-    readonly reflection: Held;
-    readonly seconds: Spread;
-  };
+  readonly spectrum?: SpectrumFigures;
 }
 
 export function figuresOf(rows: readonly Row[]): Figures {
@@ -101,14 +116,21 @@ export function figuresOf(rows: readonly Row[]): Figures {
     escapes: rows.filter(hasEscaped).map(({ index }) => index),
     decades: decadesOf(rows),
     estimate: estimated.length > 0 ? estimateFigures(rows) : undefined,
-    spectrum:
-      spectra.length > 0
-        ? {
-            transmission: held(spectra.flatMap(({ samples }) => samples.map((s) => s.transmission))),
-            reflection: held(spectra.flatMap(({ samples }) => samples.map((s) => s.reflection))),
-            seconds: spread(spectra.map(({ seconds }) => seconds)),
-          }
-        : undefined,
+    spectrum: spectra.length > 0 ? spectrumFigures(spectra) : undefined,
+  };
+}
+
+function spectrumFigures(spectra: readonly NonNullable<Row["spectrum"]>[]): SpectrumFigures {
+  const transmissions = spectra.flatMap(({ samples }) => samples.map((s) => s.transmission));
+  return {
+    transmission: held(transmissions),
+    reflection: held(spectra.flatMap(({ samples }) => samples.map((s) => s.reflection))),
+    depths: DEPTHS.map(([least, within]) => {
+      const deep = transmissions.filter(({ reference }) => reference >= least);
+      const met = deep.filter(({ difference, reference }) => difference <= within * reference).length;
+      return { least, within, compared: deep.length, met };
+    }),
+    seconds: spread(spectra.map(({ seconds }) => seconds)),
   };
 }
 

@@ -1,10 +1,10 @@
-import { parentPort, workerData } from "node:worker_threads";
 import { drawDesign } from "./draw-design.js";
 import { measure } from "./measure.js";
 import type { WorkerTask } from "./workers.js";
 
-const task = workerData as WorkerTask;
+// A signal to the whole group lets the design at hand be finished; the parent hangs up afterwards.
+process.on("SIGINT", () => undefined);
 
-parentPort?.on("message", async (index: number) => {
-  parentPort?.postMessage(await measure(drawDesign(task.seed, index, task.only), task));
+process.on("message", async ({ seed, index, only, options }: WorkerTask) => {
+  process.send?.(await measure(drawDesign(seed, index, only), options));
 });

@@ -1,65 +1,66 @@
-import { Worker } from "node:worker_threads";
+import { type ChildProcess, fork } from "node:child_process";
+import { fileURLToPath } from "node:url";
 import { drawDesign } from "./draw-design.js";
 import type { Family } from "./drawn-design.js";
 import type { MeasureOptions } from "./measure.js";
 import type { Row } from "./row.js";
 
-export interface WorkerTask extends MeasureOptions {
+/** One design to be measured, as it is sent to a worker. */
+export interface WorkerTask {
   readonly seed: number;
+  readonly index: number;
   readonly only?: Family;
+  readonly options: MeasureOptions;
 }
 
-/** Measures designs in threads, each taking the next one when it is free. A thread that dies counts as a crash of its design and is replaced. */
+/**
+ * Measures designs in processes of their own, each taking the next one when it is free. One that dies counts as a crash of its design
+ * and is replaced.
+ */
 export async function measureInWorkers(
   indices: readonly number[],
-  options: WorkerTask & { readonly workers: number },
-  progress: (done: number) => void,
-): Promise<Row[]> {
-  const { seed, only, study, patience } = options;
-  const rows: Row[] = [];
+  {
+    seed,
+    only,
+    study,
+    patience,
+    workers,
+  }: Pick<WorkerTask, "seed" | "only"> & MeasureOptions & { readonly workers: number },
+  take: (row: Row) => void,
+  ending: AbortSignal,
+): Promise<void> {
   const waiting = [...indices];
   const lane = async () => {
-    let worker: Worker | undefined;
-    for (let index = waiting.shift(); index !== undefined; index = waiting.shift()) {
-      worker ??= new Worker(new URL("./worker.ts", import.meta.url), {
-        workerData: { seed, only, study, patience },
-        execArgv: ["--import", "tsx"],
-      });
-      const current = worker;
+    let worker: ChildProcess | undefined;
+    for (let index = waiting.shift(); index !== undefined && !ending.aborted; index = waiting.shift()) {
+      if (worker?.connected !== true)
+        worker = fork(fileURLToPath(new URL("./worker.ts", import.meta.url)), { serialization: "advanced" });
       try {
-        rows.push(await answer(current, index));
+        take(await answer(worker, { seed, index, only, options: { study, patience } }));
       } catch (cause) {
         const { family, theme, text } = drawDesign(seed, index, only);
-        rows.push({ index, family, theme, text, outcome: "crashed", message: String(cause) });
-        await current.terminate();
+        take({ index, family, theme, text, outcome: "crashed", message: String(cause) });
+        worker.kill();
         worker = undefined;
       }
-      progress(rows.length);
     }
-    await worker?.terminate();
+    worker?.disconnect();
   };
-  await Promise.all(Array.from({ length: options.workers }, lane));
-  return rows.sort((a, b) => a.index - b.index);
+  await Promise.all(Array.from({ length: workers }, lane));
 }
 
-function answer(worker: Worker, index: number): Promise<Row> {
+function answer(worker: ChildProcess, task: WorkerTask): Promise<Row> {
   return new Promise((resolve, reject) => {
-    const done = () => {
+    const onMessage = (row: unknown) => {
+      worker.off("exit", onExit);
+      resolve(row as Row);
+    };
+    const onExit = (code: number | null, signal: string | null) => {
       worker.off("message", onMessage);
-      worker.off("error", onEnd);
-      worker.off("exit", onEnd);
+      reject(new Error(`its process ended with ${signal ?? `code ${code}`}`));
     };
-    const onMessage = (row: Row) => {
-      done();
-      resolve(row);
-    };
-    const onEnd = (cause: unknown) => {
-      done();
-      reject(cause instanceof Error ? cause : new Error(`the thread ended with code ${String(cause)}`));
-    };
-    worker.on("message", onMessage);
-    worker.on("error", onEnd);
-    worker.on("exit", onEnd);
-    worker.postMessage(index);
+    worker.once("message", onMessage);
+    worker.once("exit", onExit);
+    worker.send(task);
   });
 }

@@ -1,4 +1,4 @@
-import { mkdirSync, writeFileSync } from "node:fs";
+import { mkdirSync, readdirSync, rmSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { type Comparison, comparisons, hasEscaped, type Row } from "./row.js";
 
@@ -31,9 +31,11 @@ export function worstOf(rows: readonly Row[], most = WORST): Worst[] {
   return worst;
 }
 
-/** Writes each as a design file whose first lines, comments, say what was found. @returns the paths */
+/** Writes each as a design file whose first lines, comments, say what was found; those of an earlier run go. @returns the paths */
 export function writeWorst(worst: readonly Worst[], folder: string): string[] {
   mkdirSync(folder, { recursive: true });
+  for (const name of readdirSync(folder))
+    if (/^worst-\d+-design-\d+\.yaml$/.test(name)) rmSync(join(folder, name));
   return worst.map(({ row, why }, i) => {
     const path = join(folder, `worst-${String(i + 1).padStart(2, "0")}-design-${row.index}.yaml`);
     writeFileSync(path, `${[`${why}; ${finding(row)}`].map((line) => `# ${line}\n`).join("")}${row.text}`);
