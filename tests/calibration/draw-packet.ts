@@ -35,10 +35,10 @@ export function drawEnergy(
   const near = from === "left" ? 0 : structure.levelRight;
   const top = structure.top - near;
   const [low, high] = ENERGY_OF_TOP[height];
-  // A design's mean energy lies above both levels, or it is refused.
-  const least = 1.02 * Math.max(0, levelAcross(structure, from) - near);
   const energy = top > 0.02 ? Math.min(3, top * random.decades(low, high)) : random.decades(0.02, 1);
-  return Math.max(least, energy);
+  // A design's mean energy lies above both levels, or it is refused: one below is drawn again between the higher level and the top.
+  const least = 1.02 * Math.max(0, levelAcross(structure, from) - near);
+  return energy > least ? energy : random.decades(least, Math.max(2 * least, top));
 }
 
 const levelAcross = ({ levelRight }: Structure, from: "left" | "right") => (from === "left" ? levelRight : 0);
