@@ -1,5 +1,5 @@
 import type { Departure } from "../grid/journey.js";
-import { wavenumberOf, wavenumberWeight } from "../packets/gaussian.js";
+import { kineticEnergy, wavenumberOf, wavenumberWeight } from "../packets/gaussian.js";
 import type { Bounded } from "../units/bounded.js";
 import { HBAR } from "../units/constants.js";
 import { beyondFace } from "./common-checks.js";
@@ -8,6 +8,8 @@ import type { Outcome } from "./outcome.js";
 /** Energies at which the distribution of what got through is surveyed, and those at which its peak is looked at more closely. */
 const SAMPLES = 200;
 const CLOSE_SAMPLES = 12;
+/** Spreads of k above the mean up to which it is looked for: behind a thick barrier the far tail carries all that gets through. */
+const FURTHEST_SPREADS = 12;
 
 /**
  * T at the mean energy with its bound: what the extrapolation left, and what the amplitude still inside the structure or near it, or
@@ -37,7 +39,8 @@ export function boundedAtMean(
  */
 export function carryingEnergy(outcome: Outcome, from: Departure, survey: Outcome = outcome): number {
   const low = Math.max(from.lowest, from.near, from.far);
-  const step = (from.highest - low) / SAMPLES;
+  const high = from.near + kineticEnergy(from.k0 + FURTHEST_SPREADS * from.spread, from.mass);
+  const step = (high - low) / SAMPLES;
   const coarse = peak(survey, from, low + step, step, SAMPLES - 1);
   const closeStep = (3 * step) / CLOSE_SAMPLES;
   const close = peak(outcome, from, coarse - 1.5 * step, closeStep, CLOSE_SAMPLES + 1);

@@ -1,7 +1,8 @@
 import type { Departure } from "../grid/journey.js";
-import { Extrapolation, IN_PARTS } from "../numerics/extrapolation.js";
+import { ALONE, Extrapolation, IN_PARTS } from "../numerics/extrapolation.js";
 import { kineticEnergy, wavenumberWeight } from "../packets/gaussian.js";
-import type { Outcome } from "./outcome.js";
+import { HBAR } from "../units/constants.js";
+import { LAST_PART, type Outcome } from "./outcome.js";
 
 /** Wavenumbers at which a calculation's transmission is looked at, in spreads from the mean: what gets through a thick barrier is the far tail. */
 const FIRST_SPREAD = -6;
@@ -10,13 +11,16 @@ const SPREADS_APART = 0.5;
 /** Groups of neighbouring energies that are extrapolated on their own, each of about the same share of what got through. */
 const GROUPS = 4;
 /** Share of the accuracy asked for below which no bound is told. */
-const LEAST_SHARE = 0.001;
+const LEAST_SHARE = 0.01;
+/** What is inside at the end, relative to what got through, below which no resonance counts. */
+const NEGLIGIBLE_INSIDE = 1e-9;
 
 /**
  * What the spacing leaves of the transmission T, from calculations on refined grids. T is extrapolated as it is; so are the logarithm of the
  * smaller of T and R, which falls exponentially with thickness or smoothness, and the transmitted shares of four groups of energies. Errors of different
  * energies may cancel in T and make all its changes small by accident; in its parts they do not. The bound is the largest of: that
- * of T, that of the logarithm, the distance between the two, and the sum of the groups' own.
+ * of T, that of the logarithm, the distance between the two, and the sum of the groups' own. Beside a peak narrower than the samples' distance the groups
+ * say nothing, and more caution takes their place.
  */
 export class SpacingBound {
   private readonly transmission = new Extrapolation(IN_PARTS);
@@ -25,9 +29,11 @@ export class SpacingBound {
   private ends: readonly number[] | undefined;
   private reflectedIsSmaller = false;
 
+  /** @param end time at which the calculations end, fs */
   constructor(
     private readonly from: Departure,
     private readonly accuracy: number,
+    private readonly end: number,
   ) {}
 
   /** Adds the calculation at relative spacing h (smaller than all before) and returns the bound, absolute. */
@@ -40,9 +46,22 @@ export class SpacingBound {
     const second = Math.exp(l.value);
     const apart = Math.abs((this.reflectedIsSmaller ? 1 - t.value : t.value) - second);
     const parts = this.addGroups(h, outcome);
-    const least = LEAST_SHARE * this.accuracy * small;
-    const bound = Math.max(t.error, second * l.error, IN_PARTS.factor * apart, parts, least);
+    const whole = Math.max(t.error, second * l.error, IN_PARTS.factor * apart);
+    // Samples that may fall on the flank of a peak say nothing: then the whole stands alone.
+    const bound = Math.max(
+      this.isSharp(outcome) ? (ALONE.factor / IN_PARTS.factor) * whole : Math.max(whole, parts),
+      LEAST_SHARE * this.accuracy * small,
+    );
     return Number.isNaN(bound) ? 1 : Math.min(1, bound);
+  }
+
+  /** Whether what is still inside decays so slowly that a peak narrower than two samples' distance is behind it, and counts. */
+  private isSharp({ inside, insideBefore, transmitted }: Outcome): boolean {
+    if (inside < NEGLIGIBLE_INSIDE * transmitted) return false;
+    const { k0, spread, mass } = this.from;
+    const apart = (HBAR * HBAR * k0 * SPREADS_APART * spread) / mass;
+    const width = (HBAR * Math.log(insideBefore / inside)) / (LAST_PART * this.end);
+    return !(width > 2 * apart);
   }
 
   private addGroups(h: number, outcome: Outcome): number {
