@@ -57,12 +57,12 @@ export function core(potential: Potential): readonly [number, number] {
 }
 
 /** Height up to which a rising flank counts as the foot, as a share of the way to the top. */
-const FOOT_HEIGHT = 0.5;
+const FOOT_HEIGHT = 0.95;
 
 /**
- * The place (nm) up to which a smooth potential rises steadily to half its height on the side that a packet comes from (`direction` +1: the
- * left). What lingers before it is slow: it has no well to be held in and will be sent back, so it is not still to be shared out. Layers, and
- * shapes that fall first, have no such foot: theirs ends where the core begins.
+ * The place (nm) up to which a smooth potential rises steadily, nearly to its top, on the side that a packet comes from (`direction` +1: the
+ * left). What lingers before it and reaches into it is slow: it has no well to be held in and will be sent back, so it is not still to be shared
+ * out. Layers, and shapes that fall first, have no such foot: theirs ends where the core begins. (For a first layer this let bounds escape.)
  */
 export function footEnd(potential: Potential, direction: 1 | -1): number {
   const [left, right] = core(potential);
