@@ -24,9 +24,9 @@ export interface Caution {
 export const ALONE: Caution = { factor: 7, mostRatio: 1, mostForetold: 3, leastOfStep: 0.07, steps: true };
 /**
  * For a quantity whose parts are extrapolated beside it and whose bound is the largest of several, which cannot all be small by accident:
- * none of 361 random designs escaped, the nearest came to 0.74 of its bound, and the median bound was 30 times the error.
+ * with a factor of 1.5 one of 1,010 random designs escaped, to 1.16 of its bound, with a median bound of 58 times the error; two leaves it inside.
  */
-export const IN_PARTS: Caution = { factor: 1.5, mostRatio: 3, mostForetold: 1, leastOfStep: 0, steps: false };
+export const IN_PARTS: Caution = { factor: 2, mostRatio: 3, mostForetold: 1, leastOfStep: 0, steps: false };
 /** Ratios of successive coefficients of the series that are looked back on, the largest being believed, and the least that is. */
 const RATIOS = 3;
 const LEAST_RATIO = 0.1;
