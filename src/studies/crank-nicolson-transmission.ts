@@ -140,7 +140,7 @@ const NOISE_WEIGHT = 20;
 
 /**
  * Relative rounding of a transmission that is carried by a tail of the packet: every step adds noise eps over the whole band of the grid, from which
- * the wave at the carrying energy stands out by |phi(k)|^2 alone. Measured nine spreads from the mean, on boxes of different length: 5e-7 of T.
+ * the wave at the carrying energy stands out by |phi(k)|^2 alone. Measured between eight and nine spreads from the mean, on boxes of different length: up to 1e-6 of T.
  */
 function roundedTail(plan: ClosedPlan, carrying: number): number {
   const { k0, mass, near, packet } = plan.from;

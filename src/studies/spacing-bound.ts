@@ -18,7 +18,7 @@ const NEGLIGIBLE_INSIDE = 1e-9;
 /**
  * What the spacing leaves of the transmission T, from calculations on refined grids. T is extrapolated as it is; so are the logarithm of the
  * smaller of T and R, which falls exponentially with thickness or smoothness, and the transmitted shares of four groups of energies. Errors of different
- * energies may cancel in T and make all its changes small by accident; in its parts they do not. The bound is the largest of: that
+ * energies may cancel in T and make all its changes small by accident; in its parts they rarely do. The bound is the largest of: that
  * of T, that of the logarithm, the distance between the two, and the sum of the groups' own. Beside a peak narrower than the samples' distance the groups
  * say nothing, and more caution takes their place.
  */
